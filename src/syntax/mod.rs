@@ -1,0 +1,3 @@
+//! From text to a typed tree with spans.
+
+pub mod tree;
