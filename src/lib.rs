@@ -14,9 +14,9 @@ pub mod graph;
 
 pub mod algebra;
 
-pub mod value;
-
 pub mod code;
+
+pub mod value;
 
 pub mod construct;
 
