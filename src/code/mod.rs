@@ -188,6 +188,17 @@ impl Code {
         }
     }
 
+    /// The code as it was made, all names it was given taken off.
+    pub fn unnamed(&self) -> &Code {
+        let mut code = self;
+        while let [parent] = code.origin.parents.as_slice()
+            && parent.is_same_object(code)
+        {
+            code = parent;
+        }
+        code
+    }
+
     /// The field.
     pub fn field(&self) -> &Field {
         &self.body.field

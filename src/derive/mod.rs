@@ -1,1 +1,284 @@
-//! (to come)
+//! What follows from a code: distance, weights, bounds and properties, each with its grounds.
+//!
+//! In: codes whose origins carry theorems. Out: proven intervals, never guesses. A [`Session`]
+//! applies the theorems first, asks the parents where they need it, then searches, cheapest way
+//! first, until both sides meet or the budget is gone. Every answer is remembered.
+
+pub mod measures;
+pub mod properties;
+pub mod search;
+pub mod structure;
+mod verdict;
+
+pub use measures::{MEASURES, SessionMeasures};
+pub use verdict::{Judgement, Verdict};
+
+use crate::algebra::Element;
+use crate::code::{Bound, Code, Counts, Distance, Knowledge, Made, OriginKind, Side, Weights, lower, upper, weight};
+use num_bigint::BigUint;
+use search::{Budget, Progress};
+use std::cell::RefCell;
+use std::collections::HashMap;
+
+/// The work that is spent on a code while it is only a parent, or a step on the way.
+const SMALL_WORK: u64 = 1 << 27;
+
+/// Derives what is asked for and remembers it, for one run.
+pub struct Session<'a> {
+    seconds: f64,
+    progress: &'a dyn Progress,
+    memo: RefCell<HashMap<usize, Memo>>,
+}
+
+/// What is remembered of a code.
+struct Memo {
+    /// Keeps the code, so that its key stays its own.
+    code: Code,
+    distance: Option<(Effort, Distance)>,
+    weights: Option<Option<Weights>>,
+    dual: Option<Code>,
+    covering: Option<Option<usize>>,
+}
+
+/// How hard to look.
+#[derive(Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Debug)]
+pub enum Effort {
+    /// Theorems, and what costs next to nothing.
+    Small,
+    /// Up to the budget.
+    Full,
+}
+
+impl<'a> Session<'a> {
+    /// A session that may spend about so many seconds of one core on each code.
+    pub fn new(seconds: f64, progress: &'a dyn Progress) -> Session<'a> {
+        Session {
+            seconds,
+            progress,
+            memo: RefCell::new(HashMap::new()),
+        }
+    }
+
+    fn remembered<T>(&self, code: &Code, read: impl FnOnce(&Memo) -> Option<T>) -> Option<T> {
+        self.memo.borrow().get(&code.key()).and_then(read)
+    }
+
+    fn remember(&self, code: &Code, write: impl FnOnce(&mut Memo)) {
+        let mut memo = self.memo.borrow_mut();
+        write(memo.entry(code.key()).or_insert_with(|| Memo {
+            code: code.clone(),
+            distance: None,
+            weights: None,
+            dual: None,
+            covering: None,
+        }));
+    }
+
+    fn budget(&self, effort: Effort) -> Budget {
+        let full = Budget::seconds(self.seconds);
+        match effort {
+            Effort::Full => full,
+            Effort::Small => full.limited_to(SMALL_WORK),
+        }
+    }
+
+    /// What is known of the minimum distance after looking as hard as said.
+    pub fn distance_by(&self, code: &Code, effort: Effort) -> Distance {
+        let code = code.unnamed();
+        let known = self.remembered(code, |memo| memo.distance.clone());
+        if let Some((spent, distance)) = known
+            && (spent >= effort || distance.exact().is_some())
+        {
+            return distance;
+        }
+        let distance = self.derive_distance(code, effort);
+        self.remember(code, |memo| memo.distance = Some((effort, distance.clone())));
+        distance
+    }
+
+    fn derive_distance(&self, code: &Code, effort: Effort) -> Distance {
+        let mut distance = Distance::unknown(code);
+        if distance.lower == 0 {
+            return distance;
+        }
+        for bound in code.origin().rules.distance(code, self) {
+            learn(code, &mut distance, bound);
+        }
+        if distance.exact().is_none() {
+            self.learn_from_weights(code, &mut distance);
+        }
+        if distance.exact().is_none() {
+            self.search(code, &mut distance, effort);
+        }
+        distance
+    }
+
+    fn learn_from_weights(&self, code: &Code, distance: &mut Distance) {
+        let known = self.remembered(code, |memo| memo.weights.clone()).flatten();
+        let derived = known.or_else(|| code.origin().rules.weights(code, self));
+        let Some(weights) = derived else { return };
+        let Some((&least, _)) = weights.counts.iter().find(|&(&weight, _)| weight > 0) else { return };
+        distance.learn(lower(least, "weights", format!("the least weight that occurs is {least}: {}", weights.says)));
+        distance.learn(upper(least, "weights", format!("words of weight {least} occur: {}", weights.says), None));
+    }
+
+    fn search(&self, code: &Code, distance: &mut Distance, effort: Effort) {
+        let budget = self.budget(effort);
+        let divisor = properties::divisor(code);
+        let settled = search::settle(
+            code,
+            distance.lower,
+            distance.upper,
+            divisor,
+            &budget,
+            self.progress,
+        );
+        for bound in settled {
+            learn(code, distance, bound);
+        }
+    }
+
+    /// The weight distribution, by theorem, by all words, or by all words of the dual and
+    /// MacWilliams, whichever is cheaper and within the budget.
+    pub fn weights_by(&self, code: &Code, effort: Effort) -> Option<Weights> {
+        let code = code.unnamed();
+        if let Some(Some(weights)) = self.remembered(code, |memo| memo.weights.clone()) {
+            return Some(weights);
+        }
+        if effort == Effort::Small && self.remembered(code, |memo| memo.weights.clone()).is_some() {
+            return None;
+        }
+        let weights = self.derive_weights(code, effort);
+        self.remember(code, |memo| memo.weights = Some(weights.clone()));
+        weights
+    }
+
+    fn derive_weights(&self, code: &Code, effort: Effort) -> Option<Weights> {
+        if code.dimension() == 0 {
+            return Some(Weights {
+                counts: Counts::from([(0, BigUint::from(1u8))]),
+                says: "the zero word alone".to_string(),
+            });
+        }
+        if let Some(weights) = code.origin().rules.weights(code, self) {
+            return Some(weights);
+        }
+        let (n, k, q) = (code.length(), code.dimension(), code.field().order());
+        if n <= 4096 && self.distance_by(code, Effort::Small).exact() == Some(n - k + 1) {
+            return Some(Weights {
+                counts: counted(search::mds_weights(n, k, q)),
+                says: "the weights of an MDS code follow from n, k and q (MacWilliams and Sloane, 1977, ch. 11 §3 theorem 6)".to_string(),
+            });
+        }
+        let budget = self.budget(effort);
+        let own = search::cost_of_words(q, k, n);
+        let dual = search::cost_of_words(q, n - k, n);
+        if own <= dual {
+            let counts = search::weight_counts(code.generator_matrix(), &budget, self.progress)?;
+            return Some(Weights {
+                counts: counted(counts),
+                says: format!("all {q}^{k} words counted"),
+            });
+        }
+        if n > 1 << 14 {
+            return None;
+        }
+        let counts = search::weight_counts(code.check_matrix(), &budget, self.progress)?;
+        Some(Weights {
+            counts: counted(search::macwilliams(&counts, q, n, n - k)),
+            says: format!("all {q}^{} words of the dual counted, then MacWilliams", n - k),
+        })
+    }
+
+    /// The dual code.
+    pub fn dual(&self, code: &Code) -> Code {
+        if let Some(dual) = self.remembered(code, |memo| memo.dual.clone()) {
+            return dual;
+        }
+        let made = Made::new(code.field().clone(), code.length(), code.dual_space())
+            .dimension(code.redundancy())
+            .from([code.clone()]);
+        let dual = Code::new(made, "dual", code.origin().span, OriginKind::Step);
+        self.remember(code, |memo| memo.dual = Some(dual.clone()));
+        dual
+    }
+
+    /// The weight distribution of the dual.
+    pub fn dual_weights(&self, code: &Code, effort: Effort) -> Option<Weights> {
+        if let (Some(weights), true) = (self.weights_by(code, effort), code.length() <= 4096) {
+            let (n, k, q) = (code.length(), code.dimension(), code.field().order());
+            return Some(Weights {
+                counts: counted(search::macwilliams(&listed(&weights.counts, n), q, n, k)),
+                says: "from the code's own weights by MacWilliams".to_string(),
+            });
+        }
+        None
+    }
+
+    /// The covering radius, when the cosets are few enough to go through.
+    pub fn covering_radius(&self, code: &Code) -> Option<usize> {
+        if let Some(known) = self.remembered(code, |memo| memo.covering) {
+            return known;
+        }
+        let cosets = (code.field().order() as f64).powf(code.redundancy() as f64);
+        let radius = if code.redundancy() == 0 {
+            Some(0)
+        } else if cosets <= (1u64 << 24) as f64 && cosets * code.length() as f64 <= (1u64 << 32) as f64 {
+            search::covering_radius(code.check_matrix(), &self.budget(Effort::Full))
+        } else {
+            None
+        };
+        self.remember(code, |memo| memo.covering = Some(radius));
+        radius
+    }
+}
+
+impl Knowledge for Session<'_> {
+    fn distance(&self, code: &Code) -> Distance {
+        self.distance_by(code, Effort::Small)
+    }
+
+    fn weights(&self, code: &Code) -> Option<Weights> {
+        self.weights_by(code, Effort::Small)
+    }
+
+    fn cyclic(&self, code: &Code) -> bool {
+        properties::is_cyclic(self, code).verdict == Verdict::Holds
+    }
+}
+
+/// Takes a bound over; a witness is believed only when it is a word of the code of that weight.
+fn learn(code: &Code, distance: &mut Distance, bound: Bound) {
+    if let Some(word) = &bound.witness {
+        let genuine = bound.side == Side::Upper && weight(word) == bound.value && code.contains(word);
+        assert!(genuine, "the witness of {:?} is no word of the code", bound.rule);
+    }
+    distance.learn(bound);
+}
+
+/// Counts by index as counts by weight, zeros left out.
+fn counted(counts: Vec<BigUint>) -> Counts {
+    counts
+        .into_iter()
+        .enumerate()
+        .filter(|(_, count)| *count != BigUint::default())
+        .collect()
+}
+
+/// Counts by weight as counts by index, 0 to n.
+fn listed(counts: &Counts, length: usize) -> Vec<BigUint> {
+    let mut list = vec![BigUint::default(); length + 1];
+    for (&weight, count) in counts {
+        list[weight] = count.clone();
+    }
+    list
+}
+
+/// The positions where a word is not zero, and its values there.
+pub fn support(word: &[Element]) -> (Vec<usize>, Vec<Element>) {
+    word.iter()
+        .enumerate()
+        .filter(|&(_, &entry)| entry != 0)
+        .map(|(at, &entry)| (at, entry))
+        .unzip()
+}

@@ -56,7 +56,8 @@ fn unfit(operator: BinaryOperator, left: &Value, right: &Value) -> Trouble {
     )
 }
 
-fn symbol(operator: BinaryOperator) -> &'static str {
+/// An operator as written.
+pub fn symbol(operator: BinaryOperator) -> &'static str {
     use BinaryOperator as Op;
     match operator {
         Op::Add => "+",

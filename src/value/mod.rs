@@ -11,12 +11,12 @@ mod convert;
 mod points;
 mod polynomial;
 
-pub use arithmetic::{binary, negate};
+pub use arithmetic::{binary, negate, symbol};
 pub use call::{Call, Entry, Given, Parameter, bind_arguments, needed, optional};
 pub use compare::{compare, contains, equal};
 pub use convert::{element_of, integer_of, items_of};
 pub use points::{Monomials, Points};
-pub use polynomial::{Coefficient, Polynomial};
+pub use polynomial::{Coefficient, Polynomial, VARIABLES};
 
 use crate::algebra::{Element, Field, Matrix};
 use crate::code::Code;
