@@ -28,6 +28,8 @@ pub mod derive;
 
 pub mod require;
 
+pub mod project;
+
 pub mod report;
 
 pub mod emit;

@@ -14,6 +14,17 @@ pub enum Verdict {
     Undecided,
 }
 
+impl Verdict {
+    /// The word for it.
+    pub fn word(self) -> &'static str {
+        match self {
+            Verdict::Holds => "holds",
+            Verdict::Fails => "fails",
+            Verdict::Undecided => "undecided",
+        }
+    }
+}
+
 /// A verdict with its grounds.
 #[derive(Clone, PartialEq, Eq, Debug)]
 pub struct Judgement {

@@ -7,6 +7,7 @@
 mod alist;
 mod csv;
 mod json;
+mod matrices;
 mod mem;
 mod mtx;
 mod npy;
@@ -15,6 +16,7 @@ mod tex;
 mod txt;
 mod write;
 
+pub use matrices::delivery;
 pub use write::write_whole;
 
 use crate::algebra::formats::modulus_text;

@@ -82,6 +82,27 @@ impl Evaluator<'_> {
         }
     }
 
+    /// Evaluates a declaration without parameters for its mistakes alone.
+    pub fn try_declaration(&self, node: NodeIndex) {
+        let plain = match &self.program.declaration(node).kind {
+            DeclarationKind::Let(declaration) => declaration.parameters.is_empty(),
+            DeclarationKind::Matrix(declaration) => {
+                let file = self.program.graph[node].file;
+                let generic = declaration.over.as_ref().and_then(|over| self.generic_name(over, file));
+                declaration.parameters.is_empty() && generic.is_none()
+            }
+            DeclarationKind::Field(_) | DeclarationKind::Channel(_) => true,
+            _ => false,
+        };
+        if plain {
+            let span = self.program.graph[node].span;
+            let scope = Scope::of_file(self.program.graph[node].file);
+            if let Err(stop) = self.declared(node, Vec::new(), span, &scope) {
+                self.give_up(stop, span);
+            }
+        }
+    }
+
     /// Evaluates one member of a family (or a plain code, with no values) given in the order of
     /// its parameters; what cannot be built is reported.
     pub fn compile_member(&self, node: NodeIndex, values: Vec<Value>, span: Span) -> Option<CompiledCode> {

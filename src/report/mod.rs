@@ -4,6 +4,7 @@
 //! a review, JSON for machines, Markdown, HTML, tables of a family's members, and drawings of the
 //! dependency graph. The three kinds of prose share one [`document`], so that they say the same.
 
+pub mod describe;
 pub mod document;
 pub mod drawing;
 pub mod html;

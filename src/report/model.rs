@@ -12,6 +12,8 @@ use serde_json::{Map, Value};
 
 use crate::algebra::formats::modulus_text;
 use crate::algebra::{Element, Field};
+pub use crate::derive::Verdict;
+pub use crate::require::Kind;
 
 /// A whole report.
 #[derive(Clone, PartialEq, Debug, Serialize)]
@@ -374,29 +376,6 @@ impl<T: Serialize> Serialize for Named<T> {
     }
 }
 
-/// How a question was settled.
-#[derive(Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Debug, Serialize)]
-#[serde(rename_all = "lowercase")]
-pub enum Verdict {
-    /// Proven.
-    Holds,
-    /// Refuted.
-    Fails,
-    /// Neither, within the budget.
-    Undecided,
-}
-
-impl Verdict {
-    /// The word for it.
-    pub fn word(self) -> &'static str {
-        match self {
-            Verdict::Holds => "holds",
-            Verdict::Fails => "fails",
-            Verdict::Undecided => "undecided",
-        }
-    }
-}
-
 /// Whether a code has a property.
 #[derive(Clone, PartialEq, Debug, Serialize)]
 pub struct PropertyReport {
@@ -431,18 +410,6 @@ pub struct StepReport {
     /// A remark.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub says: Option<String>,
-}
-
-/// What kind of statement was put to the test.
-#[derive(Clone, Copy, PartialEq, Eq, Debug, Serialize)]
-#[serde(rename_all = "lowercase")]
-pub enum Kind {
-    /// `is …`
-    Claim,
-    /// `require …`
-    Require,
-    /// `prefer …`
-    Prefer,
 }
 
 /// A claim, requirement or preference and how it was settled.

@@ -1,0 +1,1 @@
+//! `cosetta graph`: what depends on what.
