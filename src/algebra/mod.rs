@@ -5,6 +5,7 @@
 //! turn into findings.
 
 pub mod field;
+pub mod kernels;
 pub mod matrix;
 
 pub use field::{Element, Field, FieldError};
