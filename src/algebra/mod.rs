@@ -6,6 +6,7 @@
 
 pub mod field;
 pub mod formats;
+pub mod kernels;
 pub mod matrix;
 
 pub use field::{Element, Field, FieldError};

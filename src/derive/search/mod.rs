@@ -1,0 +1,45 @@
+//! Engines that derive the distance and the weights of a linear code from its matrices, exactly.
+//!
+//! In go a generator or check matrix over a [`Field`](crate::algebra::Field) and a [`Budget`] of
+//! work; out come proven bounds, exact counts and words that show them. One file an engine;
+//! [`settle`] picks among them. Nothing here knows of text, spans or findings, and the answers
+//! depend on the matrices and the budget only, never on the clock or the number of threads.
+
+mod arithmetic;
+mod budget;
+mod columns;
+mod distance;
+mod enumerate;
+mod keys;
+mod macwilliams;
+mod transform;
+
+use num_bigint::BigUint;
+
+use crate::algebra::Element;
+
+pub use budget::{Budget, Progress, Quiet, UNITS_A_SECOND};
+pub use columns::{Dependent, dependent_columns};
+pub use distance::{Ground, Settled, Side, settle};
+pub use enumerate::{cost_of_words, minimum_by_words, weight_counts};
+pub use macwilliams::{macwilliams, mds_weights};
+
+/// How many words there are of each weight: entry w counts those of weight w, 0 ≤ w ≤ n.
+pub type Counts = Vec<BigUint>;
+
+/// A non-zero word of a code and its weight.
+#[derive(Clone, PartialEq, Eq, Debug)]
+pub struct LightWord {
+    /// How many of its entries are not zero.
+    pub weight: usize,
+    /// The word, of length n.
+    pub word: Vec<Element>,
+}
+
+impl LightWord {
+    /// Measures the word; `None` for the zero word.
+    fn new(word: Vec<Element>) -> Option<LightWord> {
+        let weight = word.iter().filter(|&&entry| entry != 0).count();
+        (weight > 0).then_some(LightWord { weight, word })
+    }
+}
