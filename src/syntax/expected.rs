@@ -53,6 +53,9 @@ fn generic(at: usize, positives: &[Rule], view: &View<'_>) -> Finding {
         .filter_map(|&rule| words(rule, before))
         .collect();
     wanted.sort_by_key(|&(rank, ..)| rank);
+    if wanted.first().is_some_and(|&(rank, ..)| rank < MINOR) {
+        wanted.retain(|&(rank, ..)| rank < MINOR);
+    }
     let mut names: Vec<&str> = Vec::new();
     for (_, name, _) in &wanted {
         if !names.contains(name) && names.len() < 4 {
@@ -87,13 +90,16 @@ fn joined(names: &[&str]) -> String {
     }
 }
 
+/// From this rank on, words are named only where there are no others.
+const MINOR: u8 = 20;
+
 /// Rank (likeliest first), words and help for a rule; `None` for what is not worth naming.
 fn words(rule: Rule, before: &str) -> Option<(u8, &'static str, &'static str)> {
     use Rule::*;
     if matches!(rule, name | step) && before == "then" {
         return Some((
             1,
-            "a step name, such as `extend`",
+            "a step name such as `extend`",
             "write `then extend` or `then shorten(first: 3)`",
         ));
     }
@@ -111,23 +117,27 @@ fn words(rule: Rule, before: &str) -> Option<(u8, &'static str, &'static str)> {
         expression | conditional | logic | range | sum | primary | prefix | named | row_named
         | condition | field_operand | phrase_operand | number | integer | decimal | hexadecimal
         | binary | bracketed | boolean | set | list | field_literal | plain_field | gf
-        | phrase_part => (3, "a value", ""),
+        | phrase_part => (
+            3,
+            "a value",
+            "a value is a number, a name, a call such as `hamming(3)`, a set `{ }` or a list `[ ]`",
+        ),
         bound | compared => (2, "a value, a bound such as `>= 4`, or `_`", ""),
         blank => (4, "`_`", ""),
-        bounds | open_list => (4, "`[`", ""),
-        parameters => (5, "parameters in `( )`", ""),
+        bounds | open_list => (MINOR, "`[`", ""),
+        parameters => (MINOR, "parameters in `( )`", ""),
         parameter => (
             2,
-            "a parameter, such as `r in 4..9`",
+            "a parameter such as `r in 4..9`",
             "write `NAME in DOMAIN`, with `= VALUE` for a default",
         ),
         domain => (3, "`in` and a set", "write `r in 4..9` or `s in {0, 4, 8}`"),
         default => (4, "a default after `=`", ""),
-        arguments => (9, "arguments in `( )`", ""),
+        arguments => (MINOR, "arguments in `( )`", ""),
         argument => (3, "an argument", "write `f(3)` or `f(length: 7)`"),
-        comma => (5, "`,`", ""),
+        comma => (5, "`,`", "two items of a list are separated by `,`"),
         colon => (5, "`:`", ""),
-        open => (8, "`(`", ""),
+        open => (MINOR, "`(`", ""),
         close => (6, "`)`", ""),
         close_list => (6, "`]`", ""),
         open_set => (6, "`{`", ""),
@@ -179,12 +189,12 @@ fn words(rule: Rule, before: &str) -> Option<(u8, &'static str, &'static str)> {
         artefact => (
             3,
             "an artefact",
-            "write what is delivered, such as `check_matrix as mtx, npy`",
+            "write what is delivered such as `check_matrix as mtx, npy`",
         ),
         kw_in => (2, "`in`", ""),
         kw_for => (8, "`for`", ""),
         comprehension => (8, "`for`", ""),
-        binder => (1, "a variable, such as `x in S`", "write `NAME in SET`"),
+        binder => (1, "a variable such as `x in S`", "write `NAME in SET`"),
         r#where | kw_where => (9, "`where`", ""),
         kw_from => (
             2,
@@ -203,15 +213,15 @@ fn words(rule: Rule, before: &str) -> Option<(u8, &'static str, &'static str)> {
         weight_table => (1, "`{`", "write `with weights {0: 1, 8: 759}`"),
         weight => (
             1,
-            "a weight and its count, such as `8: 759`",
+            "a weight and its count such as `8: 759`",
             "write `with weights {0: 1, 8: 759}`",
         ),
         group => (
             2,
-            "a group of bits, such as `data[63..0]`",
+            "a group of bits such as `data[63..0]`",
             "write `bits data[63..0], check[7..0]`",
         ),
-        group_range => (6, "an index range, such as `[63..0]`", ""),
+        group_range => (6, "an index range such as `[63..0]`", ""),
         use_names => (
             4,
             "names in `( )`",
@@ -228,12 +238,12 @@ fn words(rule: Rule, before: &str) -> Option<(u8, &'static str, &'static str)> {
         variables => (2, "`in m variables`", ""),
         coordinates => (
             3,
-            "coordinates, such as `(x, y)`",
+            "coordinates such as `(x, y)`",
             "write `points (x, y) where …` or `points in 4 variables`",
         ),
         monomial | power => (
             3,
-            "a monomial, such as `x^i`",
+            "a monomial such as `x^i`",
             "write `monomials x^i * y^j where …` or `monomials in 4 variables where degree <= 2`",
         ),
         sorted | word_sorted => (9, "`sorted by`", ""),
@@ -275,6 +285,10 @@ impl<'a> View<'a> {
             .len();
         if start < text.len() {
             return &text[start..];
+        }
+        let signs = text.trim_end_matches(['.', '=', '<', '>', '!']).len();
+        if signs < text.len() {
+            return &text[signs..];
         }
         text.char_indices()
             .next_back()

@@ -105,7 +105,7 @@ impl<'a> Reader<'a> {
     }
 
     fn ordered(&mut self, pair: Node<'a>) -> Found<Expression> {
-        let links = pair.clone().into_inner().count().saturating_sub(1);
+        let links = depth_of_list(&pair);
         self.deepen(links, &pair)?;
         let mut order = Order::new(self.text);
         for part in pair.into_inner() {
@@ -273,4 +273,20 @@ impl<'a> Reader<'a> {
     pub fn parts(&self, pair: Node<'a>) -> impl Iterator<Item = Node<'a>> + use<'a> {
         pair.into_inner().filter(|part| !is_mark(part.as_rule()))
     }
+}
+
+/// How deep the tree of a flat list of operands and operators may become: the number of its
+/// operators, where a power counts only if it stands on another.
+fn depth_of_list(pair: &Node<'_>) -> usize {
+    let mut power_before = false;
+    pair.clone()
+        .into_inner()
+        .filter(|part| part.as_rule() != Rule::primary)
+        .filter(|part| {
+            let power = part.as_str() == "^";
+            let counts = !power || power_before;
+            power_before = power;
+            counts
+        })
+        .count()
 }

@@ -11,6 +11,7 @@ mod expressions;
 mod forms;
 mod grammar;
 mod literals;
+mod look_alikes;
 mod operators;
 mod parse;
 mod reader;

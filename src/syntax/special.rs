@@ -2,110 +2,11 @@
 
 use super::expected::View;
 use super::grammar::Rule;
+use super::look_alikes::{LOOK_ALIKES, MARKS};
 use super::scan::string_end;
 use super::words::is_reserved;
 use crate::finding::{Finding, catalogue};
 use crate::source::Span;
-
-/// Marks of other languages, and what is written here.
-const MARKS: &[(&str, &str)] = &[
-    ("==", "`=` compares and defines; write one `=`"),
-    (":=", "write `=`"),
-    ("//", "a comment begins with `#`"),
-    ("/*", "a comment begins with `#` and ends with its line"),
-    ("**", "powers are written `x^2`"),
-    ("&&", "write `and`"),
-    (
-        "||",
-        "write `or`; rows of a matrix are written `| 1 0 |` each on its own",
-    ),
-    ("=>", "write `>=` for \"at least\""),
-    ("=<", "write `<=` for \"at most\""),
-    ("<>", "write `!=`"),
-    ("->", "write `then` before a step"),
-    ("|>", "write `then` before a step"),
-    (
-        "!",
-        "a comment begins with `#`; a negation is written `not`",
-    ),
-    (
-        ";",
-        "leave it out: a declaration ends where the next one begins, a clause with the next clause",
-    ),
-    ("%", "write `mod`; a comment begins with `#`"),
-    ("&", "write `and`"),
-    ("'", "texts stand in double quotes: `\"…\"`"),
-    ("`", "texts stand in double quotes: `\"…\"`"),
-    ("\\", "leave it out: a line needs no mark to go on"),
-    ("@", "leave it out"),
-    ("$", "leave it out"),
-    ("?", "write `A if CONDITION else B`"),
-    ("~", "write `not`"),
-];
-
-/// Characters that look like one of ours, and what is written here.
-const LOOK_ALIKES: &[(char, &str)] = &[
-    ('×', "*"),
-    ('·', "*"),
-    ('∙', "*"),
-    ('⋅', "*"),
-    ('∗', "*"),
-    ('÷', "/"),
-    ('⁄', "/"),
-    ('–', "-"),
-    ('—', "-"),
-    ('−', "-"),
-    ('‐', "-"),
-    ('‑', "-"),
-    ('⊕', "+"),
-    ('＋', "+"),
-    ('“', "\""),
-    ('”', "\""),
-    ('„', "\""),
-    ('«', "\""),
-    ('»', "\""),
-    ('‘', "\""),
-    ('’', "\""),
-    ('≤', "<="),
-    ('≥', ">="),
-    ('≠', "!="),
-    ('＝', "="),
-    ('…', ".."),
-    ('‥', ".."),
-    ('∈', "in"),
-    ('∧', "and"),
-    ('∨', "or"),
-    ('¬', "not"),
-    ('→', "then"),
-    ('⟨', "<"),
-    ('⟩', ">"),
-    ('∣', "|"),
-    ('│', "|"),
-    ('¹', "^1"),
-    ('²', "^2"),
-    ('³', "^3"),
-    ('⁴', "^4"),
-    ('⁵', "^5"),
-    ('⁶', "^6"),
-    ('⁷', "^7"),
-    ('⁸', "^8"),
-    ('⁹', "^9"),
-    ('ⁿ', "^n"),
-    ('，', ","),
-    ('：', ":"),
-    ('（', "("),
-    ('）', ")"),
-    ('∞', "a number"),
-    ('α', "a"),
-    ('β', "b"),
-    ('λ', "lambda"),
-    ('δ', "delta"),
-    ('\u{A0}', "a plain blank"),
-    ('\u{2009}', "a plain blank"),
-    ('\u{202F}', "a plain blank"),
-    ('\u{200B}', "nothing"),
-    ('\u{2028}', "a line end"),
-];
 
 impl View<'_> {
     /// A message for the character or mark at byte `at`, if that alone says what is wrong.
