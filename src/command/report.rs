@@ -39,7 +39,8 @@ pub(super) fn run(arguments: &Arguments) -> ExitCode {
         ..Options::default()
     };
     project::run(&files, &files::Disk, &options, &Bar::new(), |view| {
-        if let Some(missing) = arguments.code.iter().find(|name| view.program.declares(name).is_none()) {
+        let declared = |name: &String| view.program.graph.node_weights().any(|node| node.name == *name && !node.library);
+        if let Some(missing) = arguments.code.iter().find(|name| !declared(name)) {
             return complain(&format!("there is no code `{missing}` in these specs"));
         }
         let codes = view.codes.iter().map(|checked| describe(&view, checked)).collect();

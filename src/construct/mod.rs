@@ -4,6 +4,8 @@
 //! builds a space and says which theorems hold for it; it never searches.
 
 mod check;
+mod cyclic;
+mod cyclic_bounds;
 
 mod evaluate;
 pub mod functions;

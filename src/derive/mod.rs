@@ -23,6 +23,9 @@ use std::collections::HashMap;
 /// The work that is spent on a code while it is only a parent, or a step on the way.
 const SMALL_WORK: u64 = 1 << 27;
 
+/// The most entries of a generator matrix that is built for a search.
+const ENTRIES: usize = 1 << 28;
+
 /// Derives what is asked for and remembers it, for one run.
 pub struct Session<'a> {
     seconds: f64,
@@ -125,15 +128,25 @@ impl<'a> Session<'a> {
     fn search(&self, code: &Code, distance: &mut Distance, effort: Effort) {
         let budget = self.budget(effort);
         let divisor = properties::divisor(code);
+        // A long code of high rate has a generator matrix that is all but dense and of no use.
+        let enumerable = code.dimension().saturating_mul(code.length()) <= ENTRIES;
         let settled = search::settle(
-            code,
+            enumerable.then(|| code.generator_matrix()),
+            Some(code.check_matrix()),
             distance.lower,
             distance.upper,
             divisor,
             &budget,
             self.progress,
         );
-        for bound in settled {
+        for ground in settled.says {
+            let bound = match ground.side {
+                search::Side::Lower => lower(ground.value, ground.rule, ground.says),
+                search::Side::Upper => {
+                    let word = settled.word.clone().filter(|word| weight(word) == ground.value);
+                    upper(ground.value, ground.rule, ground.says, word)
+                }
+            };
             learn(code, distance, bound);
         }
     }
@@ -164,9 +177,12 @@ impl<'a> Session<'a> {
             return Some(weights);
         }
         let (n, k, q) = (code.length(), code.dimension(), code.field().order());
-        if n <= 4096 && self.distance_by(code, Effort::Small).exact() == Some(n - k + 1) {
+        if n <= 4096
+            && self.distance_by(code, Effort::Small).exact() == Some(n - k + 1)
+            && let Some(counts) = search::mds_weights(n, k, q)
+        {
             return Some(Weights {
-                counts: counted(search::mds_weights(n, k, q)),
+                counts: counted(counts),
                 says: "the weights of an MDS code follow from n, k and q (MacWilliams and Sloane, 1977, ch. 11 §3 theorem 6)".to_string(),
             });
         }
@@ -185,7 +201,7 @@ impl<'a> Session<'a> {
         }
         let counts = search::weight_counts(code.check_matrix(), &budget, self.progress)?;
         Some(Weights {
-            counts: counted(search::macwilliams(&counts, q, n, n - k)),
+            counts: counted(search::macwilliams(&counts, q, n, n - k)?),
             says: format!("all {q}^{} words of the dual counted, then MacWilliams", n - k),
         })
     }
@@ -208,7 +224,7 @@ impl<'a> Session<'a> {
         if let (Some(weights), true) = (self.weights_by(code, effort), code.length() <= 4096) {
             let (n, k, q) = (code.length(), code.dimension(), code.field().order());
             return Some(Weights {
-                counts: counted(search::macwilliams(&listed(&weights.counts, n), q, n, k)),
+                counts: counted(search::macwilliams(&listed(&weights.counts, n), q, n, k)?),
                 says: "from the code's own weights by MacWilliams".to_string(),
             });
         }

@@ -21,12 +21,12 @@ pub fn builtins(properties: &[&'static str]) -> Builtins {
         .map(|entry| entry.name)
         .chain(construct::functions::all().map(|entry| entry.name))
         .chain(["bsc", "bec"])
+        .chain(WORDS.iter().copied())
         .collect();
     Builtins {
         functions,
         steps: step::STEPS.iter().map(|entry| entry.name).collect(),
         properties: properties.to_vec(),
-        words: WORDS.to_vec(),
     }
 }
 
