@@ -1,7 +1,7 @@
 //! A report in prose, before it is laid out: headings, tables, bars, verdicts.
 //!
-//! What is said, and in which order, is decided here once; [`super::text`], [`super::markdown`]
-//! and [`super::html`] only set it.
+//! What is said, and in which order, is decided here once; [`mod@super::text`], [`mod@super::markdown`]
+//! and [`mod@super::html`] only set it.
 
 use num_bigint::BigUint;
 use num_traits::{ToPrimitive, Zero};
