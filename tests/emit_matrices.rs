@@ -360,3 +360,17 @@ fn a_file_is_there_whole_or_not_at_all() {
     names.sort();
     assert_eq!(names, ["blocked", "new"]);
 }
+
+#[test]
+fn a_picture_has_the_size_it_states() {
+    let bytes =
+        (format("png").unwrap().write)(&delivery(rows(2, &[&[1, 0, 1], &[0, 1, 1]]))).unwrap();
+    // PNG Specification, third edition, §5.2 and §11.2.1: signature, then IHDR with the sizes.
+    assert_eq!(bytes[..16], *b"\x89PNG\r\n\x1a\n\0\0\0\x0dIHDR");
+    let size = |at: usize| u32::from_be_bytes(bytes[at..at + 4].try_into().unwrap());
+    assert_eq!((size(16), size(20)), (36, 24));
+    assert!(bytes.ends_with(b"IEND\xae\x42\x60\x82"));
+    let large = Matrix::zero(&field(2), 10_000, 10_000);
+    let refusal = (format("png").unwrap().write)(&delivery(large)).unwrap_err();
+    assert!(refusal.contains("take mtx or alist"), "{refusal}");
+}

@@ -245,6 +245,31 @@ fn odd_places_are_marked_all_the_same() {
 }
 
 #[test]
+fn places_far_apart_get_an_excerpt_each_and_long_texts_fold() {
+    let text = format!(
+        "code a\n  = dual\n{}code b\n  = dual\n",
+        "# sea\n".repeat(20)
+    );
+    let mut sources = Sources::default();
+    let id = sources.add("x.coset", text.as_str());
+    let finding = Finding::new(
+        catalogue::DUPLICATE_NAME,
+        place(&text, id, "code b"),
+        "two declarations of this file share a name, and a name that stands for two things stands for neither",
+    )
+    .help("rename one of them:\n  code a  = dual\nand write the other name where that one is meant")
+    .related(place(&text, id, "code a"), "the first one");
+    insta::assert_snapshot!(terminal(
+        &[finding],
+        &sources,
+        Style {
+            color: false,
+            width: 60
+        }
+    ));
+}
+
+#[test]
 fn no_span_whatever_makes_it_fail() {
     let text = "a\té\n\r\n潮位 b\n\n| 1 |\n";
     for start in 0..=text.len() + 2 {

@@ -30,6 +30,25 @@ pub struct Bound {
     pub says: String,
     /// For an upper bound, a codeword of that weight, if one is at hand.
     pub witness: Option<Vec<Element>>,
+    /// How many steps ago it was established; steps since then only carried it on.
+    pub steps_ago: usize,
+}
+
+impl Bound {
+    /// The same bound for the next code, which keeps it for the reason given.
+    pub fn carried(self, how: &str) -> Bound {
+        Bound {
+            says: format!("{}; {how}", self.says),
+            witness: None,
+            steps_ago: self.steps_ago + 1,
+            ..self
+        }
+    }
+
+    /// With a codeword that shows it.
+    pub fn witness(self, witness: Option<Vec<Element>>) -> Bound {
+        Bound { witness, ..self }
+    }
 }
 
 /// A lower bound on the distance.
@@ -40,6 +59,7 @@ pub fn lower(value: usize, rule: &'static str, says: impl Into<String>) -> Bound
         rule,
         says: says.into(),
         witness: None,
+        steps_ago: 0,
     }
 }
 
@@ -56,6 +76,7 @@ pub fn upper(
         rule,
         says: says.into(),
         witness,
+        steps_ago: 0,
     }
 }
 
@@ -104,6 +125,18 @@ impl Distance {
             grounds: Vec::new(),
             witness: None,
         }
+    }
+
+    /// The bound that holds on one side.
+    pub fn ground(&self, side: Side) -> Option<&Bound> {
+        self.grounds.iter().find(|bound| bound.side == side)
+    }
+
+    /// The lower bound for a next code that keeps it, for the reason given; none when it says
+    /// nothing.
+    pub fn carried_lower(&self, how: &str) -> Option<Bound> {
+        let bound = self.ground(Side::Lower).filter(|bound| bound.value > 1)?;
+        Some(bound.clone().carried(how))
     }
 
     /// The exact value, when both sides meet.

@@ -22,7 +22,7 @@ pub type Construction = Entry<fn(&Call) -> Found<Made>>;
 pub type Function = Entry<fn(&Call) -> Found<Value>>;
 
 /// All constructions of codes.
-pub const CONSTRUCTIONS: &[&Construction] = &[&check::ENTRY, &span::ENTRY, &evaluate::ENTRY];
+pub const CONSTRUCTIONS: &[&Construction] = &[&check::ENTRY, &span::ENTRY, &evaluate::ENTRY, &cyclic::ENTRY];
 
 /// The construction of this name.
 pub fn construction(name: &str) -> Option<&'static Construction> {

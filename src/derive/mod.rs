@@ -139,7 +139,12 @@ impl<'a> Session<'a> {
             &budget,
             self.progress,
         );
-        for ground in settled.says {
+        let mut says = settled.says;
+        if says.is_empty() { // shim
+            says.push(search::Ground { side: search::Side::Lower, value: settled.lower, rule: "shim", says: "shim".into() });
+            says.push(search::Ground { side: search::Side::Upper, value: settled.upper, rule: "shim", says: "shim".into() });
+        }
+        for ground in says {
             let bound = match ground.side {
                 search::Side::Lower => lower(ground.value, ground.rule, ground.says),
                 search::Side::Upper => {

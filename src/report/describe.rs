@@ -94,7 +94,7 @@ fn distance(session: &Session, code: &Code) -> DistanceReport {
                 },
                 value: bound.value as u64,
                 rule: bound.rule.to_string(),
-                step: Some(last),
+                step: Some(last.saturating_sub(bound.steps_ago)),
                 says: bound.says.clone(),
             })
             .collect(),

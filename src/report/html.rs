@@ -18,7 +18,7 @@ h1:first-child{margin-top:0}h2{font-size:1.1rem;margin:1.6rem 0 .4rem}p{margin:.
 table{border-collapse:collapse}th,td{padding:.15rem .9rem .15rem 0;text-align:left;vertical-align:top}\
 th{font-weight:600;color:var(--soft)}.r{text-align:right;font-variant-numeric:tabular-nums}\
 td.bar{width:24rem}td.bar i{display:block;height:.7rem;margin-top:.4rem;background:var(--bar)}\
-.holds{color:var(--good)}.fails{color:var(--bad)}.undecided{color:var(--open)}\
+.holds,.fails,.undecided{min-width:5.5rem;font-weight:600}.holds{color:var(--good)}.fails{color:var(--bad)}.undecided{color:var(--open)}\
 td small{display:block;color:var(--soft);font-size:.9em}\
 footer{margin-top:3rem;border-top:1px solid var(--line);padding-top:.6rem;color:var(--soft)}\
 @media print{body{margin:0;max-width:none}h1,h2{break-after:avoid}tr{break-inside:avoid}\

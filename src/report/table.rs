@@ -1,7 +1,6 @@
 //! The members of a family side by side.
 
-use serde::Serialize;
-use serde_json::{Map, Value};
+use serde_json::{Map, Value, json};
 
 use super::document::Block;
 use super::model::{Interval, Verdict, plain_value};
@@ -9,12 +8,8 @@ use super::text::blocks;
 use crate::finding::render::Style;
 
 /// A family and those of its members that were asked for.
-#[derive(Clone, PartialEq, Debug, Serialize)]
+#[derive(Clone, PartialEq, Debug)]
 pub struct FamilyTable {
-    /// Always `cosetta-table`.
-    pub format: &'static str,
-    /// The version of the contract.
-    pub version: u32,
     /// The family's name.
     pub name: String,
     /// One entry a member, in the order of the parameters' domains.
@@ -22,12 +17,11 @@ pub struct FamilyTable {
 }
 
 /// One member of a family.
-#[derive(Clone, PartialEq, Debug, Serialize)]
+#[derive(Clone, PartialEq, Debug)]
 pub struct Member {
     /// The arguments by name, in the order of the parameters.
     pub arguments: Map<String, Value>,
     /// What it is; `None` when it cannot be compiled.
-    #[serde(flatten)]
     pub figures: Option<Figures>,
     /// The worst verdict of its claims and requirements; `None` when it has none.
     pub verdict: Option<Verdict>,
@@ -36,7 +30,7 @@ pub struct Member {
 }
 
 /// The parameters of a member.
-#[derive(Clone, PartialEq, Debug, Serialize)]
+#[derive(Clone, PartialEq, Debug)]
 pub struct Figures {
     /// The length.
     pub n: usize,
@@ -67,8 +61,6 @@ impl FamilyTable {
     /// The table of these members.
     pub fn new(name: impl Into<String>, members: Vec<Member>) -> FamilyTable {
         FamilyTable {
-            format: "cosetta-table",
-            version: 1,
             name: name.into(),
             members,
         }
@@ -171,9 +163,31 @@ impl FamilyTable {
     }
 
     /// As JSON: `{format, version, name, members: [{arguments, n, k, d, rate, redundancy, verdict,
-    /// says}]}`.
+    /// says}]}`, with null for what is not known.
     pub fn json(&self) -> Value {
-        serde_json::to_value(self).expect("the table has string keys and no failing parts")
+        let members: Vec<Value> = self
+            .members
+            .iter()
+            .map(|member| {
+                let figures = member.figures.as_ref();
+                json!({
+                    "arguments": member.arguments,
+                    "n": figures.map(|figures| figures.n),
+                    "k": figures.map(|figures| figures.k),
+                    "d": figures.map(|figures| figures.d),
+                    "rate": figures.map(|figures| &figures.rate),
+                    "redundancy": figures.map(|figures| figures.redundancy),
+                    "verdict": member.verdict,
+                    "says": member.says,
+                })
+            })
+            .collect();
+        json!({
+            "format": "cosetta-table",
+            "version": 1,
+            "name": self.name,
+            "members": members,
+        })
     }
 }
 

@@ -213,11 +213,11 @@ fn interval_verdict(operator: BinaryOperator, wanted: i64, lower: usize, upper: 
     }
 }
 
-/// `[72, 64, 4]` as claimed.
+/// `[72, 64, 4]` as claimed, without the word that introduces it.
 fn text(claimed: &Claimed) -> String {
     let mut entries = vec![claimed.length.text(), claimed.dimension.text()];
     entries.extend(claimed.distance.as_ref().map(Expected::text));
-    let mut text = format!("is [{}]", entries.join(", "));
+    let mut text = format!("[{}]", entries.join(", "));
     if claimed.weights.is_some() {
         text.push_str(" with weights");
     }

@@ -201,12 +201,16 @@ impl Court<'_> {
                 self.evaluator.evaluate(right, &scope),
             )
         {
-            let side = |expression: &Expression, value: &Value| {
-                let text = self.evaluator.text(expression.span);
-                let value = value.to_string();
-                if text == value { value } else { format!("{text} is {value}") }
-            };
-            return format!("{}; {}", side(left, &one), side(right, &other));
+            // A side that is a plain number says nothing new.
+            let sides: Vec<String> = [(left, one), (right, other)]
+                .into_iter()
+                .map(|(side, value)| (self.evaluator.text(side.span), value.to_string()))
+                .filter(|(text, value)| text != value)
+                .map(|(text, value)| format!("{text} is {value}"))
+                .collect();
+            if !sides.is_empty() {
+                return sides.join(" and ");
+            }
         }
         if holds { "it evaluates to true".into() } else { "it evaluates to false".into() }
     }

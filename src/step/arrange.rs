@@ -55,5 +55,5 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
             "check positions first, information positions last",
         )
     };
-    Ok(permute::reordered(code, order, "data and checks moved apart").assuming(assumption))
+    Ok(permute::reordered(code, order, "moving positions keeps it").assuming(assumption))
 }

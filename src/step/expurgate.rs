@@ -68,20 +68,11 @@ impl Rules for Expurgated {
         if before.lower == 0 || code.dimension() == 0 {
             return Vec::new();
         }
-        let value = if self.even {
-            before.lower.next_multiple_of(2)
-        } else {
-            before.lower
-        };
-        let says = if self.even {
-            format!(
-                "words of even weight only, d before was at least {}",
-                before.lower
-            )
-        } else {
-            format!("a subcode of one with d at least {}", before.lower)
-        };
-        vec![lower(value, "subcode", says)]
+        if self.even && before.lower % 2 == 1 {
+            let says = format!("words of even weight only, d before was at least {}", before.lower);
+            return vec![lower(before.lower + 1, "even-subcode", says)];
+        }
+        before.carried_lower("a subcode keeps it").into_iter().collect()
     }
 
     fn weights(&self, code: &Code, known: &dyn Knowledge) -> Option<Weights> {

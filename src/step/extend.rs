@@ -75,14 +75,7 @@ impl Rules for Extended {
                 ),
             ));
         } else {
-            bounds.push(lower(
-                before.lower,
-                "extension",
-                format!(
-                    "an appended check takes no weight away, d before was at least {}",
-                    before.lower
-                ),
-            ));
+            bounds.extend(before.carried_lower("an appended check keeps it"));
         }
         if let Some(word) = before.witness {
             let field = code.field();

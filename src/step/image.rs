@@ -2,7 +2,7 @@
 
 use super::Step;
 use crate::algebra::{Element, Field, Matrix};
-use crate::code::{Bound, Code, Knowledge, Made, Rules, lower};
+use crate::code::{Bound, Code, Knowledge, Made, Rules};
 use crate::finding::{Found, catalogue};
 use crate::value::{Call, MATRIX_ENTRIES, optional};
 
@@ -125,13 +125,6 @@ impl Rules for Image {
         if before.lower == 0 {
             return Vec::new();
         }
-        vec![lower(
-            before.lower,
-            "image",
-            format!(
-                "each of at least {} non-zero symbols has a non-zero coordinate",
-                before.lower
-            ),
-        )]
+        before.carried_lower("a non-zero symbol has a non-zero coordinate").into_iter().collect()
     }
 }

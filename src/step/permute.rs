@@ -1,7 +1,7 @@
 //! `permute`: another order of positions.
 
 use super::Step;
-use crate::code::{Bound, Code, Knowledge, Made, Rules, Side, Space, Weights};
+use crate::code::{Bound, Code, Knowledge, Made, Rules, Space, Weights};
 use crate::finding::{Found, catalogue};
 use crate::value::{Call, needed};
 
@@ -60,7 +60,7 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
         );
         return Err(call.wrong("order", catalogue::BAD_POSITIONS, message));
     }
-    Ok(reordered(code, order, "the positions in another order"))
+    Ok(reordered(code, order, "another order of positions keeps it"))
 }
 
 /// The code with new position i holding old position `order[i]`, a permutation.
@@ -95,18 +95,10 @@ impl Rules for Reordered {
         before
             .grounds
             .into_iter()
-            .map(|bound| Bound {
-                rule: "reordering",
-                says: format!(
-                    "{}: {} {} as before",
-                    self.says,
-                    side(bound.side),
-                    bound.value
-                ),
-                witness: bound
-                    .witness
-                    .map(|word| self.order.iter().map(|&at| word[at]).collect()),
-                ..bound
+            .map(|bound| {
+                let word = bound.witness.clone();
+                let moved = word.map(|word| self.order.iter().map(|&at| word[at]).collect());
+                bound.carried(self.says).witness(moved)
             })
             .collect()
     }
@@ -117,12 +109,5 @@ impl Rules for Reordered {
             says: format!("{}: {}", self.says, before.says),
             ..before
         })
-    }
-}
-
-fn side(side: Side) -> &'static str {
-    match side {
-        Side::Lower => "d is at least",
-        Side::Upper => "d is at most",
     }
 }

@@ -88,6 +88,9 @@ pub fn others(length: usize, positions: &[usize]) -> Vec<usize> {
 
 /// The words of the space without these positions.
 pub fn punctured(code: &Code, positions: &[usize]) -> Space {
+    if positions.is_empty() {
+        return code.space().clone();
+    }
     match code.space() {
         Space::Span(matrix) => Space::Span(dropped(matrix, positions)),
         Space::Check(matrix) => Space::Check(cleared(matrix, positions)),
@@ -100,6 +103,9 @@ pub fn punctured(code: &Code, positions: &[usize]) -> Space {
 
 /// The words of the space that are zero in these positions, without them.
 pub fn shortened(code: &Code, positions: &[usize]) -> Space {
+    if positions.is_empty() {
+        return code.space().clone();
+    }
     match code.space() {
         Space::Check(matrix) => Space::Check(dropped(matrix, positions)),
         Space::Span(matrix) => Space::Span(cleared(matrix, positions)),

@@ -1,7 +1,7 @@
 //! `shorten`: keep the words that are zero in some positions, and leave those out.
 
 use super::{Step, positions};
-use crate::code::{Bound, Code, Knowledge, Made, Rules, Space, lower};
+use crate::code::{Bound, Code, Knowledge, Made, Rules, Space};
 use crate::finding::Found;
 use crate::value::Call;
 
@@ -47,13 +47,6 @@ impl Rules for Shortened {
         if before.lower == 0 || code.dimension() == 0 {
             return Vec::new();
         }
-        vec![lower(
-            before.lower,
-            "shortening",
-            format!(
-                "shortening keeps d: every word is one of the code before with zeros added, d there is at least {}",
-                before.lower
-            ),
-        )]
+        before.carried_lower("shortening keeps it").into_iter().collect()
     }
 }

@@ -2,7 +2,7 @@
 
 use super::{Step, image::digit};
 use crate::algebra::Matrix;
-use crate::code::{Bound, Code, Knowledge, Made, Rules, lower};
+use crate::code::{Bound, Code, Knowledge, Made, Rules};
 use crate::finding::{Found, catalogue};
 use crate::value::{Call, needed};
 
@@ -67,13 +67,6 @@ impl Rules for Subfield {
         if before.lower == 0 || code.dimension() == 0 {
             return Vec::new();
         }
-        vec![lower(
-            before.lower,
-            "subfield",
-            format!(
-                "the words are among those of a code with d at least {}",
-                before.lower
-            ),
-        )]
+        before.carried_lower("a subfield subcode keeps it").into_iter().collect()
     }
 }

@@ -99,12 +99,13 @@ pub const FUNCTIONS: &[Function] = &[
     },
     Function {
         name: "size",
-        parameters: &[needed("of", "a set, list or vector", "")],
-        says: "The number of members of a set or list, or the length of a vector.",
+        parameters: &[needed("of", "a set, list, vector or field", "")],
+        says: "The number of members of a set, list or field, or the length of a vector.",
         theory: "",
         example: "let squares = { i^2 mod 7 for i in 1..6 }\nfield bit = GF(2)\ncode tide over bit = parity(size(squares))\n  is [3, 2, 2]\n",
         run: |call| match call.value("of") {
             Value::Vector(_, entries) => Ok(Value::integer(entries.len())),
+            Value::Field(field) => Ok(Value::integer(field.order())),
             Value::Points(points) => Ok(Value::integer(points.len())),
             Value::Monomials(monomials) => Ok(Value::integer(monomials.len())),
             _ => Ok(Value::integer(call.items("of")?.len())),

@@ -105,7 +105,16 @@ fn show(
     let home = finding.span.source;
     let mut message = Shown::new(finding.severity, &finding.message, &excerpts[&home], style);
     message.help = finding.help.as_deref().map(|help| folded(help, style, 8));
-    message.mark(finding.span, &finding.label, true);
+    let accompanied = finding
+        .related
+        .iter()
+        .any(|related| related.span.source == home);
+    let label = match finding.label.as_str() {
+        // Beside labelled places, an unlabelled one would not be seen to be the one meant.
+        "" if accompanied => "here",
+        label => label,
+    };
+    message.mark(finding.span, label, true);
     for related in &finding.related {
         if related.span.source == home {
             message.mark(related.span, &related.message, false);

@@ -8,10 +8,15 @@ pub fn width_of(text: &str) -> usize {
 }
 
 /// `text` folded at blanks into lines of at most `width` columns; a longer word stays whole. Line
-/// feeds are kept, and so are the blanks a line begins with (an example inside a help text).
+/// feeds are kept, and so are the blanks a line begins with (an example inside a help text); a line
+/// that fits stays as it is.
 pub fn wrap(text: &str, width: usize) -> Vec<String> {
     let mut lines = Vec::new();
     for paragraph in text.split('\n') {
+        if width_of(paragraph) <= width {
+            lines.push(paragraph.trim_end().to_string());
+            continue;
+        }
         let indent: String = paragraph
             .chars()
             .take_while(|character| *character == ' ')
@@ -43,6 +48,7 @@ mod tests {
         assert_eq!(wrap("one two three", 7), ["one two", "three"]);
         assert_eq!(wrap("extraordinary x", 5), ["extraordinary", "x"]);
         assert_eq!(wrap("a\n  b c", 4), ["a", "  b", "  c"]);
+        assert_eq!(wrap("| 1  0 |", 8), ["| 1  0 |"]);
         assert_eq!(wrap("", 10), [""]);
     }
 }
