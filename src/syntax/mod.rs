@@ -37,6 +37,8 @@ pub struct Parsed {
     /// Names that declarations which could not be read would have declared: they exist, so their
     /// use elsewhere deserves no finding.
     pub broken: Vec<tree::Name>,
+    /// Whether a `use` could not be read, so that names of unknown files are missing.
+    pub broken_use: bool,
     /// What is wrong, in the order of the file.
     pub findings: Vec<Finding>,
 }
@@ -54,6 +56,8 @@ pub fn parse(source: SourceId, text: &str) -> Parsed {
     let mut parsed = Parsed::default();
     for piece in &scan.pieces {
         let outcome = pieces.read(piece);
+        let lost = outcome.declaration.is_none();
+        parsed.broken_use |= lost && scan::word_at(text, piece.range.start) == "use";
         parsed.file.declarations.extend(outcome.declaration);
         parsed.broken.extend(outcome.broken);
         parsed.findings.extend(outcome.findings);
