@@ -142,3 +142,91 @@ fn dependent_columns_give_the_distance() {
         }
     });
 }
+
+#[test]
+fn information_sets_raise_the_bound_to_the_distance() {
+    each_code(60, |generator, check, counts| {
+        let n = generator.columns();
+        let Some(d) = distance(counts) else { return };
+        let raised = raise_lower_bound(generator, 1, n + 1, 1, &Budget::unlimited(), &Quiet);
+        assert_eq!(raised.lower, d, "{generator:?}");
+        let word = raised.upper.unwrap();
+        assert_eq!((word.weight, weight(&word.word)), (d, d));
+        assert!(is_word(check, &word.word));
+        // With the right upper bound known, no lighter word is met.
+        let again = raise_lower_bound(generator, 0, d, 1, &Budget::unlimited(), &Quiet);
+        assert_eq!((again.lower, again.upper), (d, None));
+    });
+}
+
+#[test]
+fn no_bound_is_claimed_that_the_budget_did_not_pay_for() {
+    each_code(20, |generator, check, counts| {
+        let Some(d) = distance(counts) else { return };
+        for units in [0, 1, 10, 100, 1000, 10_000] {
+            let budget = Budget::units(units);
+            let raised = raise_lower_bound(generator, 1, generator.columns(), 1, &budget, &Quiet);
+            assert!(raised.lower <= d && raised.upper.is_none_or(|word| word.weight >= d));
+            let found = dependent_columns(check, generator.columns(), &Budget::units(units));
+            assert!(found.independent < d && found.word.is_none_or(|word| word.weight == d));
+            let word = light_word(generator, d, 1, &Budget::units(units));
+            assert!(word.is_none_or(|word| word.weight >= d && is_word(check, &word.word)));
+        }
+    });
+}
+
+#[test]
+fn light_words_are_found_and_are_words() {
+    each_code(30, |generator, check, counts| {
+        let light = light_word(
+            generator,
+            distance(counts).unwrap_or(0),
+            7,
+            &Budget::seconds(1.0),
+        );
+        assert_eq!(light.as_ref().map(|light| light.weight), distance(counts));
+        assert!(
+            light.is_none_or(
+                |light| weight(&light.word) == light.weight && is_word(check, &light.word)
+            )
+        );
+    });
+}
+
+/// The largest distance of any vector from the nearest word.
+fn plain_covering_radius(check: &Matrix) -> usize {
+    let field = check.field();
+    let zero = vec![0; check.rows()];
+    let mut seen = std::collections::HashMap::from([(zero.clone(), 0)]);
+    let mut queue = std::collections::VecDeque::from([zero]);
+    let mut last = 0;
+    while let Some(syndrome) = queue.pop_front() {
+        let steps = seen[&syndrome];
+        last = steps;
+        for column in 0..check.columns() {
+            for scale in 1..field.order() as Element {
+                let next: Vec<Element> = syndrome
+                    .iter()
+                    .zip(check.column(column))
+                    .map(|(&a, b)| field.add(a, field.mul(scale, b)))
+                    .collect();
+                seen.entry(next.clone()).or_insert_with(|| {
+                    queue.push_back(next);
+                    steps + 1
+                });
+            }
+        }
+    }
+    last
+}
+
+#[test]
+fn covering_radii() {
+    each_code(30, |generator, check, _| {
+        let (r, q) = (check.rows(), generator.field().order());
+        if q.pow(r as u32) <= 5000 {
+            let found = covering_radius(check, &Budget::unlimited());
+            assert_eq!(found, Some(plain_covering_radius(check)), "{check:?}");
+        }
+    });
+}

@@ -91,6 +91,32 @@ pub fn byte_distances(base: &[u8], table: &[u8], distances: &mut [u32]) {
 }
 
 #[inline(always)]
+fn least_body(base: &[u8], table: &[u8]) -> (u32, usize) {
+    let mut least = (u32::MAX, 0);
+    for (at, entry) in table.chunks_exact(base.len()).enumerate() {
+        let distance = differences_body(base, entry);
+        if distance < least.0 {
+            least = (distance, at);
+        }
+    }
+    least
+}
+
+compiled_twice!(least_wide, least_body, [], [], (base: &[u8], table: &[u8]) -> (u32, usize));
+
+/// The least Hamming distance of `base` from the vectors of a table of byte symbols, and the
+/// place of the first that has it; `(u32::MAX, 0)` for an empty table. `base` must not be empty.
+pub fn least_distance(base: &[u8], table: &[u8]) -> (u32, usize) {
+    assert!(!base.is_empty(), "vectors with at least one symbol");
+    #[cfg(target_arch = "x86_64")]
+    if wide() {
+        // Sound: the features that the function is compiled for were found on this processor.
+        return unsafe { least_wide(base, table) };
+    }
+    least_body(base, table)
+}
+
+#[inline(always)]
 fn transform_body<T: Signed>(table: &mut [T]) {
     let mut half = 1;
     while half < table.len() {

@@ -17,9 +17,6 @@ pub(super) trait Keys: Sync {
     /// The integer.
     type Key: Copy + Eq + std::hash::Hash + Send + Sync;
 
-    /// The key of the zero vector.
-    fn zero(&self) -> Self::Key;
-
     /// The key of a vector.
     fn key(&self, vector: &[Element]) -> Self::Key;
 
@@ -62,10 +59,6 @@ impl BitKeys {
 
 impl Keys for BitKeys {
     type Key = u64;
-
-    fn zero(&self) -> u64 {
-        0
-    }
 
     fn key(&self, vector: &[Element]) -> u64 {
         let mut key = 0;
@@ -148,10 +141,6 @@ impl LaneKeys {
 impl Keys for LaneKeys {
     type Key = u128;
 
-    fn zero(&self) -> u128 {
-        0
-    }
-
     fn key(&self, vector: &[Element]) -> u128 {
         let prime = self.prime as u64;
         let mut digits = Vec::with_capacity(vector.len() * self.degree as usize);
@@ -217,7 +206,6 @@ mod tests {
                 .map(|(&a, &b)| field.add(a, b))
                 .collect();
             assert_eq!(keys.key(&sum), keys.add(keys.key(&left), keys.key(&right)));
-            assert_eq!(keys.add(keys.zero(), keys.key(&sum)), keys.key(&sum));
         }
     }
 

@@ -8,9 +8,13 @@
 mod arithmetic;
 mod budget;
 mod columns;
+mod combinations;
+mod covering;
 mod distance;
 mod enumerate;
+mod information_sets;
 mod keys;
+mod light_words;
 mod macwilliams;
 mod transform;
 
@@ -20,8 +24,11 @@ use crate::algebra::Element;
 
 pub use budget::{Budget, Progress, Quiet, UNITS_A_SECOND};
 pub use columns::{Dependent, dependent_columns};
+pub use covering::covering_radius;
 pub use distance::{Ground, Settled, Side, settle};
 pub use enumerate::{cost_of_words, minimum_by_words, weight_counts};
+pub use information_sets::{Raised, raise_lower_bound};
+pub use light_words::light_word;
 pub use macwilliams::{macwilliams, mds_weights};
 
 /// How many words there are of each weight: entry w counts those of weight w, 0 ≤ w ≤ n.
