@@ -11,4 +11,5 @@ pub mod matrix;
 
 pub use field::{Element, Field, FieldError};
 pub use matrix::Matrix;
-mod shim; pub use shim::*;
+mod shim;
+pub use shim::*;

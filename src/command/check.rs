@@ -37,7 +37,10 @@ pub(super) fn run(arguments: &Arguments) -> ExitCode {
         match arguments.format {
             Format::Text => text(&view),
             Format::Json => print(&format!("{:#}\n", json(&view))),
-            Format::Sarif => print(&format!("{:#}\n", render::sarif(&view.findings, view.sources))),
+            Format::Sarif => print(&format!(
+                "{:#}\n",
+                render::sarif(&view.findings, view.sources)
+            )),
         }
         status(project::class(&view.findings))
     })
@@ -45,7 +48,12 @@ pub(super) fn run(arguments: &Arguments) -> ExitCode {
 
 fn text(view: &View) {
     show_findings(&view.findings, view.sources);
-    let width = view.codes.iter().map(|checked| checked.compiled.title().len()).max().unwrap_or(0);
+    let width = view
+        .codes
+        .iter()
+        .map(|checked| checked.compiled.title().len())
+        .max()
+        .unwrap_or(0);
     let style = output_style();
     for checked in &view.codes {
         let verdict = worst(checked);

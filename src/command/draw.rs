@@ -65,23 +65,44 @@ fn diagram(view: &View) -> Diagram {
     let graph = &view.program.graph;
     let mut index = std::collections::BTreeMap::new();
     let mut diagram = Diagram {
-        title: view.program.files.iter().filter(|file| file.root).map(|file| file.name.clone()).collect::<Vec<_>>().join(", "),
-        files: view.program.files.iter().map(|file| file.name.clone()).collect(),
+        title: view
+            .program
+            .files
+            .iter()
+            .filter(|file| file.root)
+            .map(|file| file.name.clone())
+            .collect::<Vec<_>>()
+            .join(", "),
+        files: view
+            .program
+            .files
+            .iter()
+            .map(|file| file.name.clone())
+            .collect(),
         ..Diagram::default()
     };
     for node in graph.node_indices() {
         let declared = &graph[node];
-        let used = graph.neighbors_directed(node, petgraph::Direction::Incoming).any(|user| !graph[user].library);
+        let used = graph
+            .neighbors_directed(node, petgraph::Direction::Incoming)
+            .any(|user| !graph[user].library);
         if declared.library && !used {
             continue;
         }
-        let codes: Vec<_> = view.codes.iter().filter(|checked| checked.compiled.node == node).collect();
+        let codes: Vec<_> = view
+            .codes
+            .iter()
+            .filter(|checked| checked.compiled.node == node)
+            .collect();
         let caption = match codes.as_slice() {
             [one] => view.parameters(&one.compiled),
             [] => String::new(),
             many => format!("{} members", many.len()),
         };
-        let verdicts = codes.iter().flat_map(|checked| &checked.verdicts.clauses).map(|clause| clause.judgement.verdict);
+        let verdicts = codes
+            .iter()
+            .flat_map(|checked| &checked.verdicts.clauses)
+            .map(|clause| clause.judgement.verdict);
         index.insert(node, diagram.nodes.len());
         diagram.nodes.push(DiagramNode {
             name: declared.name.clone(),

@@ -48,13 +48,23 @@ pub(super) fn run(arguments: &Arguments) -> ExitCode {
             return complain("say what of the code is written: check_matrix or generator_matrix");
         };
         // The member is named in the language itself, and read as a delivery.
-        let form = arguments.form.as_ref().map(|form| format!(" in {} form", form.replace('-', "_")));
+        let form = arguments
+            .form
+            .as_ref()
+            .map(|form| format!(" in {} form", form.replace('-', "_")));
         let form = form.unwrap_or_default();
-        options.request = Some(format!("deliver {code} to \"-\" {what}{form} as {}\n", arguments.format));
+        options.request = Some(format!(
+            "deliver {code} to \"-\" {what}{form} as {}\n",
+            arguments.format
+        ));
         options.only = vec![code.split('(').next().unwrap_or(code).trim().to_string()];
-        return project::run(&files, &files::Disk, &options, &Bar::new(), |view| one(&view, &arguments.output));
+        return project::run(&files, &files::Disk, &options, &Bar::new(), |view| {
+            one(&view, &arguments.output)
+        });
     }
-    project::run(&files, &files::Disk, &options, &Bar::new(), |view| all(&view))
+    project::run(&files, &files::Disk, &options, &Bar::new(), |view| {
+        all(&view)
+    })
 }
 
 /// Writes the one artefact of the request.
@@ -63,10 +73,14 @@ fn one(view: &View, output: &str) -> ExitCode {
     let parsed = crate::syntax::parse(request, &view.sources.get(request).text);
     let mut findings = view.findings.clone();
     findings.extend(parsed.findings);
-    let deliver = parsed.file.declarations.iter().find_map(|declaration| match &declaration.kind {
-        DeclarationKind::Deliver(deliver) => Some(deliver),
-        _ => None,
-    });
+    let deliver = parsed
+        .file
+        .declarations
+        .iter()
+        .find_map(|declaration| match &declaration.kind {
+            DeclarationKind::Deliver(deliver) => Some(deliver),
+            _ => None,
+        });
     let files = match deliver.map(|deliver| prepared(view, deliver, 0)) {
         Some(Ok(files)) => files,
         Some(Err(finding)) => {
@@ -101,13 +115,28 @@ fn all(view: &View) -> ExitCode {
     let mut findings = view.findings.clone();
     let mut files: Vec<(PathBuf, Vec<u8>)> = Vec::new();
     let mut asked = false;
-    for (at, file) in view.program.files.iter().enumerate().filter(|(_, file)| !file.library) {
+    for (at, file) in view
+        .program
+        .files
+        .iter()
+        .enumerate()
+        .filter(|(_, file)| !file.library)
+    {
         for declaration in &file.tree.declarations {
-            let DeclarationKind::Deliver(deliver) = &declaration.kind else { continue };
+            let DeclarationKind::Deliver(deliver) = &declaration.kind else {
+                continue;
+            };
             asked = true;
-            let folder = Path::new(&file.name).parent().unwrap_or(Path::new("")).join(&deliver.folder.value);
+            let folder = Path::new(&file.name)
+                .parent()
+                .unwrap_or(Path::new(""))
+                .join(&deliver.folder.value);
             match prepared(view, deliver, at) {
-                Ok(ready) => files.extend(ready.into_iter().map(|(name, bytes)| (folder.join(name), bytes))),
+                Ok(ready) => files.extend(
+                    ready
+                        .into_iter()
+                        .map(|(name, bytes)| (folder.join(name), bytes)),
+                ),
                 Err(finding) => findings.push(*finding),
             }
         }
@@ -119,7 +148,9 @@ fn all(view: &View) -> ExitCode {
         return status(class);
     }
     if !asked {
-        return complain("this spec delivers nothing; name a code, or write `deliver NAME to \"out\" …` in it");
+        return complain(
+            "this spec delivers nothing; name a code, or write `deliver NAME to \"out\" …` in it",
+        );
     }
     for (path, bytes) in &files {
         if let Err(error) = emit::write_whole(path, bytes) {
@@ -131,16 +162,23 @@ fn all(view: &View) -> ExitCode {
 }
 
 /// The files of a delivery: names and bytes.
-fn prepared(view: &View, deliver: &Deliver, file: usize) -> Result<Vec<(String, Vec<u8>)>, Box<Finding>> {
+fn prepared(
+    view: &View,
+    deliver: &Deliver,
+    file: usize,
+) -> Result<Vec<(String, Vec<u8>)>, Box<Finding>> {
     let span = deliver.code.span;
-    let compiled = view.evaluator.code_named(&deliver.code, file).map_err(|stop| match stop {
-        Stop::Finding(finding) => finding,
-        _ => Box::new(Finding::new(
-            catalogue::UNKNOWN_ARTEFACT,
-            span,
-            "this code cannot be built, so nothing of it can be written",
-        )),
-    })?;
+    let compiled = view
+        .evaluator
+        .code_named(&deliver.code, file)
+        .map_err(|stop| match stop {
+            Stop::Finding(finding) => finding,
+            _ => Box::new(Finding::new(
+                catalogue::UNKNOWN_ARTEFACT,
+                span,
+                "this code cannot be built, so nothing of it can be written",
+            )),
+        })?;
     let mut files = Vec::new();
     for artefact in &deliver.artefacts {
         let delivery = delivery(&compiled, artefact)?;
@@ -148,9 +186,18 @@ fn prepared(view: &View, deliver: &Deliver, file: usize) -> Result<Vec<(String, 
             let Some(writer) = emit::format(&format.text) else {
                 return Err(unknown_format(&format.text, format.span));
             };
-            let bytes = (writer.write)(&delivery)
-                .map_err(|says| Box::new(Finding::new(catalogue::UNKNOWN_ARTEFACT, format.span, says)))?;
-            files.push((format!("{}.{}.{}", file_stem(&compiled), artefact.what.text, writer.extension), bytes));
+            let bytes = (writer.write)(&delivery).map_err(|says| {
+                Box::new(Finding::new(catalogue::UNKNOWN_ARTEFACT, format.span, says))
+            })?;
+            files.push((
+                format!(
+                    "{}.{}.{}",
+                    file_stem(&compiled),
+                    artefact.what.text,
+                    writer.extension
+                ),
+                bytes,
+            ));
         }
     }
     Ok(files)
@@ -159,7 +206,11 @@ fn prepared(view: &View, deliver: &Deliver, file: usize) -> Result<Vec<(String, 
 fn file_stem(compiled: &CompiledCode) -> String {
     let mut stem = compiled.name.clone();
     for (_, value) in &compiled.arguments {
-        let text: String = value.to_string().chars().filter(char::is_ascii_alphanumeric).collect();
+        let text: String = value
+            .to_string()
+            .chars()
+            .filter(char::is_ascii_alphanumeric)
+            .collect();
         stem = format!("{stem}-{text}");
     }
     stem
@@ -171,23 +222,42 @@ fn delivery(compiled: &CompiledCode, artefact: &Artefact) -> Result<Delivery, Bo
         "generator_matrix" => What::GeneratorMatrix,
         other => return Err(unknown_artefact(other, artefact.what.span)),
     };
-    let form = match artefact.form.as_ref().map(|form| (form.text.as_str(), form.span)) {
+    let form = match artefact
+        .form
+        .as_ref()
+        .map(|form| (form.text.as_str(), form.span))
+    {
         None => None,
         Some(("as_built", _)) => Some(Form::AsBuilt),
         Some(("systematic", _)) => Some(Form::Systematic),
         Some(("reduced", _)) => Some(Form::Reduced),
         Some((other, span)) => {
-            let finding = Finding::new(catalogue::UNKNOWN_ARTEFACT, span, format!("there is no form `{other}`"));
-            return Err(Box::new(finding.help("a matrix comes as_built, systematic or reduced")));
+            let finding = Finding::new(
+                catalogue::UNKNOWN_ARTEFACT,
+                span,
+                format!("there is no form `{other}`"),
+            );
+            return Err(Box::new(
+                finding.help("a matrix comes as_built, systematic or reduced"),
+            ));
         }
     };
-    emit::delivery(compiled, what, form)
-        .map_err(|says| Box::new(Finding::new(catalogue::UNKNOWN_ARTEFACT, artefact.what.span, says)))
+    emit::delivery(compiled, what, form).map_err(|says| {
+        Box::new(Finding::new(
+            catalogue::UNKNOWN_ARTEFACT,
+            artefact.what.span,
+            says,
+        ))
+    })
 }
 
 fn unknown_artefact(name: &str, span: Span) -> Box<Finding> {
     let known = ["check_matrix", "generator_matrix"];
-    let finding = Finding::new(catalogue::UNKNOWN_ARTEFACT, span, format!("`{name}` cannot be written"));
+    let finding = Finding::new(
+        catalogue::UNKNOWN_ARTEFACT,
+        span,
+        format!("`{name}` cannot be written"),
+    );
     Box::new(match near_names(name, known).first() {
         Some(near) => finding.help(format!("did you mean `{near}`?")),
         None => finding.help(format!("what can be written: {}", known.join(", "))),
@@ -196,7 +266,11 @@ fn unknown_artefact(name: &str, span: Span) -> Box<Finding> {
 
 fn unknown_format(name: &str, span: Span) -> Box<Finding> {
     let known: Vec<&str> = emit::FORMATS.iter().map(|format| format.name).collect();
-    let finding = Finding::new(catalogue::UNKNOWN_ARTEFACT, span, format!("there is no format `{name}`"));
+    let finding = Finding::new(
+        catalogue::UNKNOWN_ARTEFACT,
+        span,
+        format!("there is no format `{name}`"),
+    );
     Box::new(match near_names(name, known.iter().copied()).first() {
         Some(near) => finding.help(format!("did you mean `{near}`?")),
         None => finding.help(format!("the formats are {}", known.join(", "))),

@@ -17,7 +17,8 @@ pub fn specs(named: &[String]) -> Result<Vec<(String, String)>, String> {
         let path = Path::new(name);
         if path.is_dir() {
             let before = paths.len();
-            below(path, &mut paths).map_err(|error| format!("cannot read the folder {name}: {error}"))?;
+            below(path, &mut paths)
+                .map_err(|error| format!("cannot read the folder {name}: {error}"))?;
             if paths.len() == before {
                 return Err(format!("there is no *.coset file below {name}"));
             }
@@ -31,9 +32,13 @@ pub fn specs(named: &[String]) -> Result<Vec<(String, String)>, String> {
         .iter()
         .map(|path| {
             let shown = shown(path);
-            let bytes = std::fs::read(path).map_err(|error| format!("cannot read {shown}: {error}"))?;
+            let bytes =
+                std::fs::read(path).map_err(|error| format!("cannot read {shown}: {error}"))?;
             let text = String::from_utf8(bytes).map_err(|error| {
-                format!("{shown} is no UTF-8 text: byte {} is wrong", error.utf8_error().valid_up_to())
+                format!(
+                    "{shown} is no UTF-8 text: byte {} is wrong",
+                    error.utf8_error().valid_up_to()
+                )
             })?;
             Ok((shown, text))
         })
@@ -52,7 +57,10 @@ fn below(folder: &Path, found: &mut Vec<PathBuf>) -> std::io::Result<()> {
     for path in entries {
         if path.is_dir() && !path.is_symlink() {
             below(&path, found)?;
-        } else if path.extension().is_some_and(|extension| extension == "coset") {
+        } else if path
+            .extension()
+            .is_some_and(|extension| extension == "coset")
+        {
             found.push(path);
         }
     }
@@ -65,30 +73,48 @@ pub struct Disk;
 
 impl Loader for Disk {
     fn load(&self, from: &str, path: &str) -> Result<(String, Vec<u8>), LoadError> {
-        let folder = Path::new(from).parent().unwrap_or(Path::new("")).to_path_buf();
+        let folder = Path::new(from)
+            .parent()
+            .unwrap_or(Path::new(""))
+            .to_path_buf();
         if Path::new(path).is_absolute() {
-            return Err(LoadError(format!("{path}: a spec names files relative to itself")));
+            return Err(LoadError(format!(
+                "{path}: a spec names files relative to itself"
+            )));
         }
         let wanted = tidied(&folder.join(path));
         let real = |path: &Path| {
-            let path = if path.as_os_str().is_empty() { Path::new(".") } else { path };
-            path.canonicalize().map_err(|error| LoadError(format!("{}: {error}", shown(path))))
+            let path = if path.as_os_str().is_empty() {
+                Path::new(".")
+            } else {
+                path
+            };
+            path.canonicalize()
+                .map_err(|error| LoadError(format!("{}: {error}", shown(path))))
         };
         let target = real(&wanted)?;
         let working = real(Path::new("."))?;
         let home = real(&folder)?;
-        let root = if home.starts_with(&working) { &working } else { &home };
+        let root = if home.starts_with(&working) {
+            &working
+        } else {
+            &home
+        };
         if !target.starts_with(root) {
             return Err(LoadError(format!("{path} lies outside the project's root")));
         }
-        let size = std::fs::metadata(&target).map_err(|error| LoadError(format!("{path}: {error}")))?;
+        let size =
+            std::fs::metadata(&target).map_err(|error| LoadError(format!("{path}: {error}")))?;
         if !size.is_file() {
             return Err(LoadError(format!("{path} is no file")));
         }
         if size.len() > FILE_SIZE {
-            return Err(LoadError(format!("{path} is larger than {FILE_SIZE} bytes")));
+            return Err(LoadError(format!(
+                "{path} is larger than {FILE_SIZE} bytes"
+            )));
         }
-        let bytes = std::fs::read(&target).map_err(|error| LoadError(format!("{path}: {error}")))?;
+        let bytes =
+            std::fs::read(&target).map_err(|error| LoadError(format!("{path}: {error}")))?;
         Ok((shown(&wanted), bytes))
     }
 }
@@ -99,7 +125,9 @@ fn tidied(path: &Path) -> PathBuf {
     for component in path.components() {
         match component {
             Component::CurDir => {}
-            Component::ParentDir if matches!(tidy.components().next_back(), Some(Component::Normal(_))) => {
+            Component::ParentDir
+                if matches!(tidy.components().next_back(), Some(Component::Normal(_))) =>
+            {
                 tidy.pop();
             }
             other => tidy.push(other),

@@ -39,11 +39,20 @@ pub(super) fn run(arguments: &Arguments) -> ExitCode {
         ..Options::default()
     };
     project::run(&files, &files::Disk, &options, &Bar::new(), |view| {
-        let declared = |name: &String| view.program.graph.node_weights().any(|node| node.name == *name && !node.library);
+        let declared = |name: &String| {
+            view.program
+                .graph
+                .node_weights()
+                .any(|node| node.name == *name && !node.library)
+        };
         if let Some(missing) = arguments.code.iter().find(|name| !declared(name)) {
             return complain(&format!("there is no code `{missing}` in these specs"));
         }
-        let codes = view.codes.iter().map(|checked| describe(&view, checked)).collect();
+        let codes = view
+            .codes
+            .iter()
+            .map(|checked| describe(&view, checked))
+            .collect();
         let report = Report::new(codes, render::json(&view.findings, view.sources));
         match arguments.format {
             Format::Json => print(&format!("{:#}\n", report::json(&report))),

@@ -42,7 +42,10 @@ pub(super) fn run(arguments: &Arguments) -> ExitCode {
         show_findings(&view.findings, view.sources);
         let tables = tables(&view);
         let written: Vec<String> = match arguments.format {
-            Format::Text => tables.iter().map(|table| table.text(output_style())).collect(),
+            Format::Text => tables
+                .iter()
+                .map(|table| table.text(output_style()))
+                .collect(),
             Format::Csv => tables.iter().map(FamilyTable::csv).collect(),
             Format::Json if tables.len() == 1 => vec![format!("{:#}\n", tables[0].json())],
             Format::Json => {
@@ -52,7 +55,9 @@ pub(super) fn run(arguments: &Arguments) -> ExitCode {
         };
         print(&written.join("\n"));
         if tables.is_empty() {
-            return complain("these specs declare no family with a finite domain, as in `code name(r in 2..8)`");
+            return complain(
+                "these specs declare no family with a finite domain, as in `code name(r in 2..8)`",
+            );
         }
         status(project::class(&view.findings))
     })

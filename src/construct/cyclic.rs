@@ -15,8 +15,16 @@ pub const ENTRY: Construction = Construction {
     name: "cyclic",
     parameters: &[
         needed("length", "an integer", "n, prime to q when roots are given"),
-        optional("roots", "a set of integers", "exponents of a primitive n-th root of unity; their conjugates are roots too"),
-        optional("generator", "a polynomial in x", "a divisor of x^n - 1, in place of roots"),
+        optional(
+            "roots",
+            "a set of integers",
+            "exponents of a primitive n-th root of unity; their conjugates are roots too",
+        ),
+        optional(
+            "generator",
+            "a polynomial in x",
+            "a divisor of x^n - 1, in place of roots",
+        ),
         optional("in", "a field", "the field in which the roots are named"),
     ],
     says: "The multiples of a generator polynomial modulo x^n - 1; position i of a word carries x^(n-1-i), highest power first.",
@@ -47,13 +55,20 @@ fn run(call: &Call) -> Found<Made> {
 
 fn by_roots(call: &Call, field: &Field, length: usize) -> Found<Made> {
     let exponents = exponents(call, length)?;
-    let stated = if call.has("in") { Some(call.field_argument("in")?) } else { None };
+    let stated = if call.has("in") {
+        Some(call.field_argument("in")?)
+    } else {
+        None
+    };
     let found = generator_from_roots(field, length, &exponents, stated)
         .map_err(|error| refused(call, field, length, &error))?;
     let cyclic = Cyclic::new(field, length, found.generator.coefficients().to_vec())
         .expect("a product of minimal polynomials of n-th roots of unity divides x^n - 1");
     Ok(made(field, length, cyclic)
-        .rules(ByRoots { length, roots: found.roots })
+        .rules(ByRoots {
+            length,
+            roots: found.roots,
+        })
         .assuming(format!("roots are powers of b, where {}", found.convention)))
 }
 
@@ -70,17 +85,28 @@ fn exponents(call: &Call, length: usize) -> Found<BTreeSet<u64>> {
     call.items("roots")?
         .iter()
         .map(|item| match item {
-            Value::Integer(number) => Ok(number.mod_floor(&modulus).to_u64().expect("below the length")),
+            Value::Integer(number) => Ok(number
+                .mod_floor(&modulus)
+                .to_u64()
+                .expect("below the length")),
             other => Err(call.wrong(
                 "roots",
                 catalogue::WRONG_TYPE,
-                format!("roots are named by their exponents, integers, not by {}", other.kind()),
+                format!(
+                    "roots are named by their exponents, integers, not by {}",
+                    other.kind()
+                ),
             )),
         })
         .collect()
 }
 
-fn refused(call: &Call, field: &Field, length: usize, error: &RootError) -> Box<crate::finding::Finding> {
+fn refused(
+    call: &Call,
+    field: &Field,
+    length: usize,
+    error: &RootError,
+) -> Box<crate::finding::Finding> {
     let place = match error {
         RootError::CommonFactor { .. } => "length",
         _ if call.has("in") => "in",
@@ -112,7 +138,9 @@ fn by_generator(call: &Call, field: &Field, length: usize) -> Found<Made> {
 /// A non-zero polynomial argument of degree at most n, made monic; coefficients lowest first.
 pub(super) fn polynomial(call: &Call, name: &str, field: &Field, length: usize) -> Found<Vec<u32>> {
     let coefficients = match call.value(name) {
-        Value::Polynomial(polynomial) => call.at(name, polynomial.coefficients(field, length + 1))?,
+        Value::Polynomial(polynomial) => {
+            call.at(name, polynomial.coefficients(field, length + 1))?
+        }
         other => match crate::value::element_of(field, other) {
             Ok(0) => Vec::new(),
             Ok(constant) => vec![constant],
@@ -123,10 +151,19 @@ pub(super) fn polynomial(call: &Call, name: &str, field: &Field, length: usize) 
         },
     };
     let Some(&leading) = coefficients.last() else {
-        return Err(call.wrong(name, catalogue::BAD_ROOTS, "the zero polynomial generates nothing"));
+        return Err(call.wrong(
+            name,
+            catalogue::BAD_ROOTS,
+            "the zero polynomial generates nothing",
+        ));
     };
-    let scale = field.inv(leading).expect("a leading coefficient is not zero");
-    Ok(coefficients.iter().map(|&entry| field.mul(entry, scale)).collect())
+    let scale = field
+        .inv(leading)
+        .expect("a leading coefficient is not zero");
+    Ok(coefficients
+        .iter()
+        .map(|&entry| field.mul(entry, scale))
+        .collect())
 }
 
 struct ByRoots {
@@ -152,12 +189,18 @@ struct ByGenerator;
 
 impl Rules for ByGenerator {
     fn distance(&self, code: &Code, _known: &dyn Knowledge) -> Vec<Bound> {
-        let Space::Cyclic(cyclic) = code.space() else { return Vec::new() };
+        let Space::Cyclic(cyclic) = code.space() else {
+            return Vec::new();
+        };
         let generator = cyclic.generator();
         if code.dimension() == 0 || generator.len() < 2 || generator[0] == 0 {
             return Vec::new();
         }
         // A single power of x is no multiple of a polynomial with a constant term and a degree.
-        vec![lower(2, "cyclic", "no single power of x is a multiple of the generator")]
+        vec![lower(
+            2,
+            "cyclic",
+            "no single power of x is a multiple of the generator",
+        )]
     }
 }

@@ -16,7 +16,9 @@ pub fn bounds(length: u64, roots: &BTreeSet<u64>) -> Vec<Bound> {
     }
     let set = RootSet::new(length, roots);
     let mut found = Vec::new();
-    let Some(best) = set.longest_run() else { return found };
+    let Some(best) = set.longest_run() else {
+        return found;
+    };
     let value = best.run as usize + 1;
     found.push(lower(
         value,
@@ -65,7 +67,11 @@ impl RootSet {
     /// The longest run with the given step, which is prime to n.
     fn run_with(&self, step: u64) -> Run {
         let back = self.length - step % self.length;
-        let mut best = Run { start: 0, step, run: 0 };
+        let mut best = Run {
+            start: 0,
+            step,
+            run: 0,
+        };
         for &root in &self.roots {
             // A run is counted from its first root only.
             if self.has(root + back) {
@@ -78,7 +84,11 @@ impl RootSet {
                 at = (at + step) % self.length;
             }
             if run > best.run {
-                best = Run { start: root, step, run };
+                best = Run {
+                    start: root,
+                    step,
+                    run,
+                };
             }
         }
         best
@@ -124,7 +134,8 @@ impl RootSet {
                         }
                         let mut repeats = 0;
                         while repeats < self.length
-                            && (0..shorter).all(|at| self.has(start + at * step + (repeats + 1) * second))
+                            && (0..shorter)
+                                .all(|at| self.has(start + at * step + (repeats + 1) * second))
                         {
                             repeats += 1;
                         }
@@ -162,6 +173,9 @@ fn written(start: u64, step: u64, run: u64, length: u64) -> String {
     match (run, step) {
         (1, _) => format!("power {start}"),
         (_, 1) => format!("powers {start}..{}", start + run - 1),
-        _ => format!("powers {start}, {}, … ({run} in steps of {step})", (start + step) % length),
+        _ => format!(
+            "powers {start}, {}, … ({run} in steps of {step})",
+            (start + step) % length
+        ),
     }
 }

@@ -4,6 +4,7 @@
 //! builds a space and says which theorems hold for it; it never searches.
 
 mod check;
+mod crc;
 mod cyclic;
 mod cyclic_bounds;
 
@@ -22,7 +23,13 @@ pub type Construction = Entry<fn(&Call) -> Found<Made>>;
 pub type Function = Entry<fn(&Call) -> Found<Value>>;
 
 /// All constructions of codes.
-pub const CONSTRUCTIONS: &[&Construction] = &[&check::ENTRY, &span::ENTRY, &evaluate::ENTRY, &cyclic::ENTRY];
+pub const CONSTRUCTIONS: &[&Construction] = &[
+    &check::ENTRY,
+    &span::ENTRY,
+    &evaluate::ENTRY,
+    &cyclic::ENTRY,
+    &crc::ENTRY,
+];
 
 /// The construction of this name.
 pub fn construction(name: &str) -> Option<&'static Construction> {

@@ -20,10 +20,22 @@ pub const MEASURES: &[(&str, &str)] = &[
     ("redundancy", "n - k"),
     ("dual", "the dual code; dual.d is its distance"),
     ("weights", "weights(w): the number of words of weight w"),
-    ("row_weight", "the greatest weight of a row of the check matrix as built"),
-    ("column_weight", "the greatest weight of a column of the check matrix as built"),
-    ("girth", "the length of the shortest cycle of the check matrix as built"),
-    ("covering_radius", "the greatest distance of any word of the space from the code"),
+    (
+        "row_weight",
+        "the greatest weight of a row of the check matrix as built",
+    ),
+    (
+        "column_weight",
+        "the greatest weight of a column of the check matrix as built",
+    ),
+    (
+        "girth",
+        "the length of the shortest cycle of the check matrix as built",
+    ),
+    (
+        "covering_radius",
+        "the greatest distance of any word of the space from the code",
+    ),
 ];
 
 /// All names that [`SessionMeasures`] answers to: quantities and properties.
@@ -58,15 +70,26 @@ fn integer(value: impl Into<BigInt>) -> Measured {
 }
 
 fn unknown(what: &str) -> Trouble {
-    Trouble::new(catalogue::CLAIM_UNDECIDED, format!("{what} could not be derived within the budget"))
-        .help("give a larger --budget")
+    Trouble::new(
+        catalogue::CLAIM_UNDECIDED,
+        format!("{what} could not be derived within the budget"),
+    )
+    .help("give a larger --budget")
 }
 
 impl Measures for SessionMeasures<'_> {
-    fn measure(&self, code: &Code, name: &str, arguments: &[Value]) -> Option<Result<Measured, Trouble>> {
+    fn measure(
+        &self,
+        code: &Code,
+        name: &str,
+        arguments: &[Value],
+    ) -> Option<Result<Measured, Trouble>> {
         let measured = match (name, arguments) {
             ("weights", [Value::Integer(weight)]) => self.weight_count(code, weight),
-            ("weights", _) => Err(Trouble::new(catalogue::BAD_ARGUMENT, "`weights` takes one integer, as in `weights(4)`")),
+            ("weights", _) => Err(Trouble::new(
+                catalogue::BAD_ARGUMENT,
+                "`weights` takes one integer, as in `weights(4)`",
+            )),
             (_, []) => self.plain(code, name)?,
             _ => return None,
         };
@@ -87,11 +110,20 @@ impl SessionMeasures<'_> {
             ))),
             "d" => return Some(self.distance(code)),
             "dual" => Measured::Exactly(Value::Code(self.session.dual(code))),
-            "row_weight" => integer(maximum(&structure::row_weights(structure::check_matrix(code)))),
-            "column_weight" => integer(maximum(&structure::column_weights(structure::check_matrix(code)))),
+            "row_weight" => integer(maximum(&structure::row_weights(structure::check_matrix(
+                code,
+            )))),
+            "column_weight" => integer(maximum(&structure::column_weights(
+                structure::check_matrix(code),
+            ))),
             "girth" => return Some(girth(code)),
             "covering_radius" => {
-                return Some(self.session.covering_radius(code).map(integer).ok_or_else(|| unknown("the covering radius")));
+                return Some(
+                    self.session
+                        .covering_radius(code)
+                        .map(integer)
+                        .ok_or_else(|| unknown("the covering radius")),
+                );
             }
             _ => return self.property(code, name),
         }))
@@ -99,7 +131,10 @@ impl SessionMeasures<'_> {
 
     fn distance(&self, code: &Code) -> Result<Measured, Trouble> {
         if code.dimension() == 0 {
-            return Err(Trouble::new(catalogue::BAD_NUMBER, "the code holds only the zero word, so it has no distance"));
+            return Err(Trouble::new(
+                catalogue::BAD_NUMBER,
+                "the code holds only the zero word, so it has no distance",
+            ));
         }
         let distance = self.session.distance_by(code, Effort::Full);
         Ok(match distance.exact() {
@@ -109,9 +144,16 @@ impl SessionMeasures<'_> {
     }
 
     fn weight_count(&self, code: &Code, weight: &BigInt) -> Result<Measured, Trouble> {
-        let weights = self.session.weights_by(code, Effort::Full).ok_or_else(|| unknown("the weight distribution"))?;
-        let count = weight.to_usize().and_then(|weight| weights.counts.get(&weight));
-        Ok(integer(count.cloned().map(BigInt::from).unwrap_or_default()))
+        let weights = self
+            .session
+            .weights_by(code, Effort::Full)
+            .ok_or_else(|| unknown("the weight distribution"))?;
+        let count = weight
+            .to_usize()
+            .and_then(|weight| weights.counts.get(&weight));
+        Ok(integer(
+            count.cloned().map(BigInt::from).unwrap_or_default(),
+        ))
     }
 
     fn property(&self, code: &Code, name: &str) -> Option<Result<Measured, Trouble>> {
@@ -119,7 +161,10 @@ impl SessionMeasures<'_> {
         let measured = match judgement.verdict {
             Verdict::Holds => Ok(Measured::Exactly(Value::Boolean(true))),
             Verdict::Fails => Ok(Measured::Exactly(Value::Boolean(false))),
-            Verdict::Undecided => Err(unknown(&format!("whether the code is {name} ({})", judgement.says))),
+            Verdict::Undecided => Err(unknown(&format!(
+                "whether the code is {name} ({})",
+                judgement.says
+            ))),
         };
         *self.last.borrow_mut() = Some(judgement);
         Some(measured)
@@ -133,7 +178,10 @@ fn maximum(weights: &[usize]) -> usize {
 fn girth(code: &Code) -> Result<Measured, Trouble> {
     match structure::girth(structure::check_matrix(code)) {
         Ok(Some(length)) => Ok(integer(length)),
-        Ok(None) => Err(Trouble::new(catalogue::BAD_NUMBER, "the check matrix has no cycle, so it has no girth")),
+        Ok(None) => Err(Trouble::new(
+            catalogue::BAD_NUMBER,
+            "the check matrix has no cycle, so it has no girth",
+        )),
         Err(()) => Err(unknown("the girth of so large a matrix")),
     }
 }

@@ -14,7 +14,9 @@ pub use measures::{MEASURES, SessionMeasures};
 pub use verdict::{Judgement, Verdict};
 
 use crate::algebra::Element;
-use crate::code::{Bound, Code, Counts, Distance, Knowledge, Made, OriginKind, Side, Weights, lower, upper, weight};
+use crate::code::{
+    Bound, Code, Counts, Distance, Knowledge, Made, OriginKind, Side, Weights, lower, upper, weight,
+};
 use num_bigint::BigUint;
 use search::{Budget, Progress};
 use std::cell::RefCell;
@@ -95,7 +97,9 @@ impl<'a> Session<'a> {
             return distance;
         }
         let distance = self.derive_distance(code, effort);
-        self.remember(code, |memo| memo.distance = Some((effort, distance.clone())));
+        self.remember(code, |memo| {
+            memo.distance = Some((effort, distance.clone()))
+        });
         distance
     }
 
@@ -120,9 +124,20 @@ impl<'a> Session<'a> {
         let known = self.remembered(code, |memo| memo.weights.clone()).flatten();
         let derived = known.or_else(|| code.origin().rules.weights(code, self));
         let Some(weights) = derived else { return };
-        let Some((&least, _)) = weights.counts.iter().find(|&(&weight, _)| weight > 0) else { return };
-        distance.learn(lower(least, "weights", format!("the least weight that occurs is {least}: {}", weights.says)));
-        distance.learn(upper(least, "weights", format!("words of weight {least} occur: {}", weights.says), None));
+        let Some((&least, _)) = weights.counts.iter().find(|&(&weight, _)| weight > 0) else {
+            return;
+        };
+        distance.learn(lower(
+            least,
+            "weights",
+            format!("the least weight that occurs is {least}: {}", weights.says),
+        ));
+        distance.learn(upper(
+            least,
+            "weights",
+            format!("words of weight {least} occur: {}", weights.says),
+            None,
+        ));
     }
 
     fn search(&self, code: &Code, distance: &mut Distance, effort: Effort) {
@@ -139,16 +154,14 @@ impl<'a> Session<'a> {
             &budget,
             self.progress,
         );
-        let mut says = settled.says;
-        if says.is_empty() { // shim
-            says.push(search::Ground { side: search::Side::Lower, value: settled.lower, rule: "shim", says: "shim".into() });
-            says.push(search::Ground { side: search::Side::Upper, value: settled.upper, rule: "shim", says: "shim".into() });
-        }
-        for ground in says {
+        for ground in settled.says {
             let bound = match ground.side {
                 search::Side::Lower => lower(ground.value, ground.rule, ground.says),
                 search::Side::Upper => {
-                    let word = settled.word.clone().filter(|word| weight(word) == ground.value);
+                    let word = settled
+                        .word
+                        .clone()
+                        .filter(|word| weight(word) == ground.value);
                     upper(ground.value, ground.rule, ground.says, word)
                 }
             };
@@ -207,7 +220,10 @@ impl<'a> Session<'a> {
         let counts = search::weight_counts(code.check_matrix(), &budget, self.progress)?;
         Some(Weights {
             counts: counted(search::macwilliams(&counts, q, n, n - k)?),
-            says: format!("all {q}^{} words of the dual counted, then MacWilliams", n - k),
+            says: format!(
+                "all {q}^{} words of the dual counted, then MacWilliams",
+                n - k
+            ),
         })
     }
 
@@ -244,7 +260,9 @@ impl<'a> Session<'a> {
         let cosets = (code.field().order() as f64).powf(code.redundancy() as f64);
         let radius = if code.redundancy() == 0 {
             Some(0)
-        } else if cosets <= (1u64 << 24) as f64 && cosets * code.length() as f64 <= (1u64 << 32) as f64 {
+        } else if cosets <= (1u64 << 24) as f64
+            && cosets * code.length() as f64 <= (1u64 << 32) as f64
+        {
             search::covering_radius(code.check_matrix(), &self.budget(Effort::Full))
         } else {
             None
@@ -271,8 +289,13 @@ impl Knowledge for Session<'_> {
 /// Takes a bound over; a witness is believed only when it is a word of the code of that weight.
 fn learn(code: &Code, distance: &mut Distance, bound: Bound) {
     if let Some(word) = &bound.witness {
-        let genuine = bound.side == Side::Upper && weight(word) == bound.value && code.contains(word);
-        assert!(genuine, "the witness of {:?} is no word of the code", bound.rule);
+        let genuine =
+            bound.side == Side::Upper && weight(word) == bound.value && code.contains(word);
+        assert!(
+            genuine,
+            "the witness of {:?} is no word of the code",
+            bound.rule
+        );
     }
     distance.learn(bound);
 }

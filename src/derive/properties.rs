@@ -20,18 +20,66 @@ pub struct Property {
 
 /// All properties, in the order of reports.
 pub const PROPERTIES: &[Property] = &[
-    Property { name: "mds", says: "d = n - k + 1, the most that Singleton's bound allows", decide: mds },
-    Property { name: "perfect", says: "the balls of radius (d - 1)/2 around the words fill the space", decide: perfect },
-    Property { name: "self_dual", says: "the code is its own dual", decide: self_dual },
-    Property { name: "self_orthogonal", says: "all words are orthogonal to each other: the code lies in its dual", decide: self_orthogonal },
-    Property { name: "dual_containing", says: "the dual lies in the code", decide: dual_containing },
-    Property { name: "complementary_dual", says: "the code and its dual share only the zero word", decide: complementary_dual },
-    Property { name: "cyclic", says: "every cyclic shift of a word is a word", decide: is_cyclic },
-    Property { name: "even", says: "every weight is even", decide: even },
-    Property { name: "doubly_even", says: "every weight is divisible by 4", decide: doubly_even },
-    Property { name: "systematic", says: "the data stand unchanged at one end of the word", decide: systematic },
-    Property { name: "equidistant", says: "all words but zero have the same weight", decide: equidistant },
-    Property { name: "projective", says: "no two positions are multiples of each other: the dual's distance is at least 3", decide: projective },
+    Property {
+        name: "mds",
+        says: "d = n - k + 1, the most that Singleton's bound allows",
+        decide: mds,
+    },
+    Property {
+        name: "perfect",
+        says: "the balls of radius (d - 1)/2 around the words fill the space",
+        decide: perfect,
+    },
+    Property {
+        name: "self_dual",
+        says: "the code is its own dual",
+        decide: self_dual,
+    },
+    Property {
+        name: "self_orthogonal",
+        says: "all words are orthogonal to each other: the code lies in its dual",
+        decide: self_orthogonal,
+    },
+    Property {
+        name: "dual_containing",
+        says: "the dual lies in the code",
+        decide: dual_containing,
+    },
+    Property {
+        name: "complementary_dual",
+        says: "the code and its dual share only the zero word",
+        decide: complementary_dual,
+    },
+    Property {
+        name: "cyclic",
+        says: "every cyclic shift of a word is a word",
+        decide: is_cyclic,
+    },
+    Property {
+        name: "even",
+        says: "every weight is even",
+        decide: even,
+    },
+    Property {
+        name: "doubly_even",
+        says: "every weight is divisible by 4",
+        decide: doubly_even,
+    },
+    Property {
+        name: "systematic",
+        says: "the data stand unchanged at one end of the word",
+        decide: systematic,
+    },
+    Property {
+        name: "equidistant",
+        says: "all words but zero have the same weight",
+        decide: equidistant,
+    },
+    Property {
+        name: "projective",
+        says: "no two positions are multiples of each other: the dual's distance is at least 3",
+        decide: projective,
+    },
 ];
 
 /// The property of this name.
@@ -48,9 +96,16 @@ fn mds(session: &Session, code: &Code) -> Judgement {
     if distance.lower == singleton {
         Judgement::holds(format!("d = n - k + 1 = {singleton}"))
     } else if distance.upper < singleton {
-        Judgement::fails(format!("d is at most {}, but n - k + 1 = {singleton}", distance.upper)).witness(distance.witness)
+        Judgement::fails(format!(
+            "d is at most {}, but n - k + 1 = {singleton}",
+            distance.upper
+        ))
+        .witness(distance.witness)
     } else {
-        Judgement::undecided(format!("d lies in {}..{}; n - k + 1 = {singleton}", distance.lower, distance.upper))
+        Judgement::undecided(format!(
+            "d lies in {}..{}; n - k + 1 = {singleton}",
+            distance.lower, distance.upper
+        ))
     }
 }
 
@@ -60,7 +115,10 @@ fn perfect(session: &Session, code: &Code) -> Judgement {
     }
     let distance = session.distance_by(code, Effort::Full);
     let Some(d) = distance.exact() else {
-        return Judgement::undecided(format!("d is only known to lie in {}..{}", distance.lower, distance.upper));
+        return Judgement::undecided(format!(
+            "d is only known to lie in {}..{}",
+            distance.lower, distance.upper
+        ));
     };
     let radius = (d - 1) / 2;
     let ball = ball(code.length(), code.field().order(), radius);
@@ -85,7 +143,12 @@ pub fn ball(length: usize, order: u64, radius: usize) -> BigUint {
 
 /// The first pair of rows of two matrices that are not orthogonal; `Err` when it costs too much.
 fn skew_pair(one: &Matrix, two: &Matrix) -> Result<Option<(usize, usize)>, ()> {
-    if one.rows().saturating_mul(two.rows()).saturating_mul(one.columns()) > WORK {
+    if one
+        .rows()
+        .saturating_mul(two.rows())
+        .saturating_mul(one.columns())
+        > WORK
+    {
         return Err(());
     }
     for row in 0..one.rows() {
@@ -100,34 +163,60 @@ fn skew_pair(one: &Matrix, two: &Matrix) -> Result<Option<(usize, usize)>, ()> {
 fn orthogonal(one: &Matrix, two: &Matrix, yes: &str, what: &str) -> Judgement {
     match skew_pair(one, two) {
         Ok(None) => Judgement::holds(yes),
-        Ok(Some((row, other))) => Judgement::fails(format!("rows {row} and {other} of {what} are not orthogonal")),
+        Ok(Some((row, other))) => Judgement::fails(format!(
+            "rows {row} and {other} of {what} are not orthogonal"
+        )),
         Err(()) => Judgement::undecided("the matrices are too large to multiply"),
     }
 }
 
 fn self_orthogonal(_session: &Session, code: &Code) -> Judgement {
     if code.dimension() > code.redundancy() {
-        return Judgement::fails(format!("k = {} is more than n - k = {}", code.dimension(), code.redundancy()));
+        return Judgement::fails(format!(
+            "k = {} is more than n - k = {}",
+            code.dimension(),
+            code.redundancy()
+        ));
     }
     let generator = code.generator_matrix();
-    orthogonal(generator, generator, "all rows of a generator matrix are orthogonal to each other", "the generator matrix")
+    orthogonal(
+        generator,
+        generator,
+        "all rows of a generator matrix are orthogonal to each other",
+        "the generator matrix",
+    )
 }
 
 fn dual_containing(_session: &Session, code: &Code) -> Judgement {
     if code.dimension() < code.redundancy() {
-        return Judgement::fails(format!("k = {} is less than n - k = {}", code.dimension(), code.redundancy()));
+        return Judgement::fails(format!(
+            "k = {} is less than n - k = {}",
+            code.dimension(),
+            code.redundancy()
+        ));
     }
     let check = code.check_matrix();
-    orthogonal(check, check, "all rows of a check matrix are orthogonal to each other", "the check matrix")
+    orthogonal(
+        check,
+        check,
+        "all rows of a check matrix are orthogonal to each other",
+        "the check matrix",
+    )
 }
 
 fn self_dual(session: &Session, code: &Code) -> Judgement {
     if code.dimension() != code.redundancy() {
-        return Judgement::fails(format!("k = {} is not n - k = {}", code.dimension(), code.redundancy()));
+        return Judgement::fails(format!(
+            "k = {} is not n - k = {}",
+            code.dimension(),
+            code.redundancy()
+        ));
     }
     let judgement = self_orthogonal(session, code);
     if judgement.verdict == Verdict::Holds {
-        return Judgement::holds("k = n - k, and all rows of a generator matrix are orthogonal to each other");
+        return Judgement::holds(
+            "k = n - k, and all rows of a generator matrix are orthogonal to each other",
+        );
     }
     judgement
 }
@@ -135,14 +224,21 @@ fn self_dual(session: &Session, code: &Code) -> Judgement {
 fn complementary_dual(_session: &Session, code: &Code) -> Judgement {
     let generator = code.generator_matrix();
     let size = generator.rows();
-    if size.saturating_mul(size).saturating_mul(generator.columns()) > WORK {
+    if size
+        .saturating_mul(size)
+        .saturating_mul(generator.columns())
+        > WORK
+    {
         return Judgement::undecided("the matrices are too large to multiply");
     }
     let rank = generator.multiply(&generator.transpose()).rank();
     Judgement::of(
         rank == size,
         "G times its transpose is invertible (Massey, 1992)",
-        format!("G times its transpose has rank {rank}, not k = {size}: the code meets its dual in dimension {}", size - rank),
+        format!(
+            "G times its transpose has rank {rank}, not k = {size}: the code meets its dual in dimension {}",
+            size - rank
+        ),
     )
 }
 
@@ -151,18 +247,29 @@ pub fn is_cyclic(session: &Session, code: &Code) -> Judgement {
     if let Space::Cyclic(_) = code.space() {
         return Judgement::holds("built from a generator polynomial that divides x^n - 1");
     }
-    if let Some(says) = code.unnamed().origin().rules.cyclic(code.unnamed(), session) {
+    if let Some(says) = code
+        .unnamed()
+        .origin()
+        .rules
+        .cyclic(code.unnamed(), session)
+    {
         return Judgement::holds(says);
     }
     let length = code.length();
-    if code.dimension().saturating_mul(code.redundancy()).saturating_mul(length) > WORK {
+    if code
+        .dimension()
+        .saturating_mul(code.redundancy())
+        .saturating_mul(length)
+        > WORK
+    {
         return Judgement::undecided("the matrices are too large to multiply");
     }
     let order: Vec<usize> = (0..length).map(|at| (at + length - 1) % length).collect();
     let shifted = code.generator_matrix().select_columns(&order);
     match skew_pair(&shifted, code.check_matrix()) {
         Ok(None) => Judgement::holds("the shifts of a generator matrix's rows are words"),
-        Ok(Some((row, _))) => Judgement::fails("a word's cyclic shift is no word").witness(Some(code.generator_matrix().row(row))),
+        Ok(Some((row, _))) => Judgement::fails("a word's cyclic shift is no word")
+            .witness(Some(code.generator_matrix().row(row))),
         Err(()) => Judgement::undecided("the matrices are too large to multiply"),
     }
 }
@@ -172,12 +279,18 @@ fn divisible(session: &Session, code: &Code, by: usize) -> Judgement {
     let Some(weights) = weights else {
         let divisor = divisor(code);
         if divisor % by == 0 {
-            return Judgement::holds(format!("all rows of a generator matrix have weights divisible by {by}, and so have their sums"));
+            return Judgement::holds(format!(
+                "all rows of a generator matrix have weights divisible by {by}, and so have their sums"
+            ));
         }
         let generator = code.generator_matrix();
-        let odd = (0..generator.rows()).map(|row| generator.row(row)).find(|row| weight(row) % by != 0);
+        let odd = (0..generator.rows())
+            .map(|row| generator.row(row))
+            .find(|row| weight(row) % by != 0);
         return match odd {
-            Some(word) => Judgement::fails(format!("a word has weight {}", weight(&word))).witness(Some(word)),
+            Some(word) => {
+                Judgement::fails(format!("a word has weight {}", weight(&word))).witness(Some(word))
+            }
             None => skew_sum(code, by),
         };
     };
@@ -201,7 +314,8 @@ fn skew_sum(code: &Code, by: usize) -> Judgement {
             .map(|(&left, right)| field.add(left, right))
             .collect();
         if weight(&sum) % by != 0 {
-            return Judgement::fails(format!("a word has weight {}", weight(&sum))).witness(Some(sum));
+            return Judgement::fails(format!("a word has weight {}", weight(&sum)))
+                .witness(Some(sum));
         }
     }
     Judgement::undecided("the weights are not known")
@@ -225,7 +339,9 @@ pub fn divisor(code: &Code) -> usize {
         return 1;
     }
     let generator = code.generator_matrix();
-    let rows: Vec<usize> = (0..generator.rows()).map(|row| weight(&generator.row(row))).collect();
+    let rows: Vec<usize> = (0..generator.rows())
+        .map(|row| weight(&generator.row(row)))
+        .collect();
     let all = |by: usize| rows.iter().all(|weight| weight % by == 0);
     let orthogonal = || skew_pair(generator, generator) == Ok(None);
     match order {
@@ -238,24 +354,38 @@ pub fn divisor(code: &Code) -> usize {
 
 fn systematic(_session: &Session, code: &Code) -> Judgement {
     let (n, k) = (code.length(), code.dimension());
-    let informative = |positions: Vec<usize>| code.generator_matrix().select_columns(&positions).rank() == k;
+    let informative =
+        |positions: Vec<usize>| code.generator_matrix().select_columns(&positions).rank() == k;
     if let Space::Cyclic(_) = code.space() {
-        return Judgement::holds("the first k positions of a cyclic code are free to carry data, the checks come last");
+        return Judgement::holds(
+            "the first k positions of a cyclic code are free to carry data, the checks come last",
+        );
     }
     if information_positions(code).iter().copied().eq(0..k) || informative((0..k).collect()) {
-        return Judgement::holds("the first k positions are free to carry data, the checks come last");
+        return Judgement::holds(
+            "the first k positions are free to carry data, the checks come last",
+        );
     }
     if informative((n - k..n).collect()) {
-        return Judgement::holds("the last k positions are free to carry data, the checks come first");
+        return Judgement::holds(
+            "the last k positions are free to carry data, the checks come first",
+        );
     }
-    Judgement::fails("neither the first nor the last k positions are independent; `arrange(data: first)` moves the data there")
+    Judgement::fails(
+        "neither the first nor the last k positions are independent; `arrange(data: first)` moves the data there",
+    )
 }
 
 fn equidistant(session: &Session, code: &Code) -> Judgement {
     let Some(weights) = session.weights_by(code, Effort::Full) else {
         return Judgement::undecided("the weights are not known");
     };
-    let occurring: Vec<usize> = weights.counts.keys().copied().filter(|&weight| weight > 0).collect();
+    let occurring: Vec<usize> = weights
+        .counts
+        .keys()
+        .copied()
+        .filter(|&weight| weight > 0)
+        .collect();
     match occurring.as_slice() {
         [] => Judgement::holds("there is no word but zero"),
         [only] => Judgement::holds(format!("every word but zero has weight {only}")),
@@ -277,7 +407,9 @@ fn projective(_session: &Session, code: &Code) -> Judgement {
             *entry = field.mul(*entry, scale);
         }
         if let Some(other) = seen.insert(column, position) {
-            return Judgement::fails(format!("positions {other} and {position} carry multiples of the same symbol"));
+            return Judgement::fails(format!(
+                "positions {other} and {position} carry multiples of the same symbol"
+            ));
         }
     }
     Judgement::holds("no two columns of a generator matrix are multiples of each other")

@@ -9,7 +9,8 @@ const EDGES: usize = 1 << 20;
 
 /// The check matrix that structure is read off: as built where there is one.
 pub fn check_matrix(code: &Code) -> &Matrix {
-    code.check_matrix_as_built().unwrap_or_else(|| code.check_matrix())
+    code.check_matrix_as_built()
+        .unwrap_or_else(|| code.check_matrix())
 }
 
 /// The number of non-zero entries of each row of a matrix.
@@ -97,5 +98,9 @@ pub fn dependent_rows(matrix: &Matrix) -> Option<Vec<usize>> {
     let lightest = (0..relations.rows())
         .map(|row| relations.row(row))
         .min_by_key(|relation| relation.iter().filter(|&&entry| entry != 0).count())?;
-    Some((0..lightest.len()).filter(|&at| lightest[at] != 0).collect())
+    Some(
+        (0..lightest.len())
+            .filter(|&at| lightest[at] != 0)
+            .collect(),
+    )
 }

@@ -64,7 +64,11 @@ impl Judgement {
 
     /// Proven or refuted.
     pub fn of(holds: bool, yes: impl Into<String>, no: impl Into<String>) -> Judgement {
-        if holds { Judgement::holds(yes) } else { Judgement::fails(no) }
+        if holds {
+            Judgement::holds(yes)
+        } else {
+            Judgement::fails(no)
+        }
     }
 
     /// With a word that shows it.

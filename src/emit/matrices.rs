@@ -9,13 +9,21 @@ use crate::evaluate::CompiledCode;
 ///
 /// # Errors
 /// When the form does not exist: in words, with what to ask for instead.
-pub fn delivery(compiled: &CompiledCode, what: What, form: Option<Form>) -> Result<Delivery, String> {
+pub fn delivery(
+    compiled: &CompiledCode,
+    what: What,
+    form: Option<Form>,
+) -> Result<Delivery, String> {
     let code = &compiled.code;
     let as_built = match what {
         What::CheckMatrix => code.check_matrix_as_built(),
         What::GeneratorMatrix => code.generator_matrix_as_built(),
     };
-    let form = form.unwrap_or(if as_built.is_some() { Form::AsBuilt } else { Form::Reduced });
+    let form = form.unwrap_or(if as_built.is_some() {
+        Form::AsBuilt
+    } else {
+        Form::Reduced
+    });
     let information = information_positions(code);
     let matrix = match (form, what) {
         (Form::AsBuilt, _) => as_built.cloned().ok_or_else(|| {
@@ -52,7 +60,9 @@ pub fn delivery(compiled: &CompiledCode, what: What, form: Option<Form>) -> Resu
 
 /// All positions, those given first.
 fn leading(mut first: Vec<usize>, code: &Code) -> Vec<usize> {
-    let rest: Vec<usize> = (0..code.length()).filter(|at| !first.contains(at)).collect();
+    let rest: Vec<usize> = (0..code.length())
+        .filter(|at| !first.contains(at))
+        .collect();
     first.extend(rest);
     first
 }

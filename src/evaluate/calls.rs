@@ -8,7 +8,8 @@ use crate::finding::{Finding, catalogue};
 use crate::source::Span;
 use crate::step;
 use crate::syntax::tree::{
-    Argument, CodeDeclaration, DeclarationKind, Expression, ExpressionKind, MatrixDeclaration, Name, Parameter, Step,
+    Argument, CodeDeclaration, DeclarationKind, Expression, ExpressionKind, MatrixDeclaration,
+    Name, Parameter, Step,
 };
 use crate::value::{Channel, Given, Value, bind_arguments};
 use num_rational::BigRational;
@@ -20,7 +21,10 @@ impl Evaluator<'_> {
             .iter()
             .map(|argument| {
                 Ok(Given {
-                    name: argument.name.as_ref().map(|name| (name.text.clone(), name.span)),
+                    name: argument
+                        .name
+                        .as_ref()
+                        .map(|name| (name.text.clone(), name.span)),
                     value: self.evaluate(&argument.value, scope)?,
                     span: argument.value.span,
                 })
@@ -29,15 +33,29 @@ impl Evaluator<'_> {
     }
 
     /// `f(arguments)`
-    pub(super) fn call(&self, function: &Name, arguments: &[Argument], span: Span, scope: &Scope) -> Outcome<Value> {
+    pub(super) fn call(
+        &self,
+        function: &Name,
+        arguments: &[Argument],
+        span: Span,
+        scope: &Scope,
+    ) -> Outcome<Value> {
         let name = function.text.as_str();
         if let Some(value) = scope.local(name) {
-            return Err(mistyped(function.span, &format!("`{name}` takes no arguments"), value));
+            return Err(mistyped(
+                function.span,
+                &format!("`{name}` takes no arguments"),
+                value,
+            ));
         }
         if let Some(subject) = &scope.subject
             && self.program.lookup(scope.file, name).is_none()
         {
-            let values: Vec<Value> = self.given(arguments, scope)?.into_iter().map(|given| given.value).collect();
+            let values: Vec<Value> = self
+                .given(arguments, scope)?
+                .into_iter()
+                .map(|given| given.value)
+                .collect();
             if let Some(measured) = self.measures.measure(&subject.code, name, &values) {
                 let measured = measured.map_err(|trouble| Stop::from(trouble.at(span)))?;
                 return self.measured(measured, name);
@@ -52,7 +70,12 @@ impl Evaluator<'_> {
             let given = self.given(arguments, scope)?;
             let call = self.bind(name, span, entry.parameters, given, scope)?;
             let made = (entry.run)(&call)?;
-            return Ok(Value::Code(Code::new(made, self.text(span), span, OriginKind::Start)));
+            return Ok(Value::Code(Code::new(
+                made,
+                self.text(span),
+                span,
+                OriginKind::Start,
+            )));
         }
         if let Some(entry) = construct::function(name) {
             let given = self.given(arguments, scope)?;
@@ -62,7 +85,11 @@ impl Evaluator<'_> {
         if name == "bsc" || name == "bec" {
             return self.channel(name, arguments, span, scope);
         }
-        let mut finding = Finding::new(catalogue::UNKNOWN_NAME, function.span, format!("there is no `{name}` to call"));
+        let mut finding = Finding::new(
+            catalogue::UNKNOWN_NAME,
+            function.span,
+            format!("there is no `{name}` to call"),
+        );
         if step::step(name).is_some() {
             finding = finding.help(format!("it is a step: write `… then {name}`"));
         }
@@ -70,14 +97,25 @@ impl Evaluator<'_> {
     }
 
     /// A member of a family, shown with the values it was called with.
-    fn renamed(&self, value: Value, name: &str, arguments: &[Argument], span: Span, scope: &Scope) -> Value {
-        let Value::Code(code) = value else { return value };
+    fn renamed(
+        &self,
+        value: Value,
+        name: &str,
+        arguments: &[Argument],
+        span: Span,
+        scope: &Scope,
+    ) -> Value {
+        let Value::Code(code) = value else {
+            return value;
+        };
         let shown: Vec<String> = arguments
             .iter()
             .map(|argument| {
                 let text = match (&argument.value.kind, self.evaluate(&argument.value, scope)) {
                     (ExpressionKind::Integer(_), _) => self.text(argument.value.span),
-                    (_, Ok(value @ (Value::Integer(_) | Value::Rational(_) | Value::Set(_)))) => value.to_string(),
+                    (_, Ok(value @ (Value::Integer(_) | Value::Rational(_) | Value::Set(_)))) => {
+                        value.to_string()
+                    }
                     _ => self.text(argument.value.span),
                 };
                 match &argument.name {
@@ -89,20 +127,41 @@ impl Evaluator<'_> {
         Value::Code(code.named(format!("{name}({})", shown.join(", ")), span))
     }
 
-    fn channel(&self, name: &str, arguments: &[Argument], span: Span, scope: &Scope) -> Outcome<Value> {
+    fn channel(
+        &self,
+        name: &str,
+        arguments: &[Argument],
+        span: Span,
+        scope: &Scope,
+    ) -> Outcome<Value> {
         let given = self.given(arguments, scope)?;
         let bound = bind_arguments(name, span, &["rate"], &[false], given)?;
-        let (value, place) = bound.into_iter().flatten().next().expect("the needed argument was bound");
+        let (value, place) = bound
+            .into_iter()
+            .flatten()
+            .next()
+            .expect("the needed argument was bound");
         let rate = match value {
             Value::Rational(rate) => rate,
             Value::Integer(number) => BigRational::from_integer(number),
             other => return Err(mistyped(place, "a rate is a number", &other)),
         };
-        let (zero, one) = (BigRational::from_integer(0.into()), BigRational::from_integer(1.into()));
+        let (zero, one) = (
+            BigRational::from_integer(0.into()),
+            BigRational::from_integer(1.into()),
+        );
         if rate < zero || rate > one {
-            return Err(wrong(catalogue::BAD_ARGUMENT, place, format!("a rate is a probability from 0 to 1, not {rate}")));
+            return Err(wrong(
+                catalogue::BAD_ARGUMENT,
+                place,
+                format!("a rate is a probability from 0 to 1, not {rate}"),
+            ));
         }
-        Ok(Value::Channel(if name == "bsc" { Channel::Symmetric(rate) } else { Channel::Erasure(rate) }))
+        Ok(Value::Channel(if name == "bsc" {
+            Channel::Symmetric(rate)
+        } else {
+            Channel::Erasure(rate)
+        }))
     }
 
     /// `CODE then STEP`
@@ -113,7 +172,11 @@ impl Evaluator<'_> {
         };
         let name = applied.name.text.as_str();
         let Some(entry) = step::step(name) else {
-            let finding = Finding::new(catalogue::UNKNOWN_NAME, applied.name.span, format!("there is no step `{name}`"));
+            let finding = Finding::new(
+                catalogue::UNKNOWN_NAME,
+                applied.name.span,
+                format!("there is no step `{name}`"),
+            );
             return Err(Stop::Finding(Box::new(finding)));
         };
         let inner = scope.inside(&before);
@@ -122,10 +185,19 @@ impl Evaluator<'_> {
         let mut made = (entry.run)(&before, &call)?;
         made.parents.insert(0, before);
         if made.length == 0 {
-            return Err(wrong(catalogue::SHAPE, applied.span, "no position is left".into()));
+            return Err(wrong(
+                catalogue::SHAPE,
+                applied.span,
+                "no position is left".into(),
+            ));
         }
         let text = self.step_text(applied, &inner);
-        Ok(Value::Code(Code::new(made, text, applied.span, OriginKind::Step)))
+        Ok(Value::Code(Code::new(
+            made,
+            text,
+            applied.span,
+            OriginKind::Step,
+        )))
     }
 
     /// A step as written, with numbers in place of expressions: `shorten(first: 56)`.
@@ -151,7 +223,13 @@ impl Evaluator<'_> {
     }
 
     /// The value of a declaration, with arguments if it is a family.
-    pub(super) fn declared(&self, node: NodeIndex, given: Vec<Given>, span: Span, scope: &Scope) -> Outcome<Value> {
+    pub(super) fn declared(
+        &self,
+        node: NodeIndex,
+        given: Vec<Given>,
+        span: Span,
+        scope: &Scope,
+    ) -> Outcome<Value> {
         if self.program.broken(node) {
             return Err(Stop::Reported);
         }
@@ -160,8 +238,12 @@ impl Evaluator<'_> {
         let name = self.program.graph[node].name.clone();
         let (parameters, generic): (&[Parameter], Option<&Expression>) = match &declaration.kind {
             DeclarationKind::Let(declaration) => (&declaration.parameters, None),
-            DeclarationKind::Matrix(declaration) => (&declaration.parameters, declaration.over.as_ref()),
-            DeclarationKind::Code(declaration) => (&declaration.parameters, declaration.over.as_ref()),
+            DeclarationKind::Matrix(declaration) => {
+                (&declaration.parameters, declaration.over.as_ref())
+            }
+            DeclarationKind::Code(declaration) => {
+                (&declaration.parameters, declaration.over.as_ref())
+            }
             _ => (&[], None),
         };
         let mut home = Scope::of_file(file);
@@ -171,9 +253,13 @@ impl Evaluator<'_> {
                 let finding = Finding::new(
                     catalogue::FIELD_UNSTATED,
                     span,
-                    format!("`{name}` works over any field; which one is meant here does not follow"),
+                    format!(
+                        "`{name}` works over any field; which one is meant here does not follow"
+                    ),
                 )
-                .help("state it: `code NAME over FIELD = …`, or `… over GF(2)` behind the expression");
+                .help(
+                    "state it: `code NAME over FIELD = …`, or `… over GF(2)` behind the expression",
+                );
                 return Err(Stop::Finding(Box::new(finding)));
             };
             key = format!("{} {:?} {}", field.order(), field.modulus(), field.symbol());
@@ -188,10 +274,13 @@ impl Evaluator<'_> {
             return known.clone().map_err(|()| Stop::Reported);
         }
         let result = self.fresh(&declaration.kind, &home);
-        let parametrised = !parameters.is_empty() || generic.is_some_and(|over| self.generic_name(over, file).is_some());
+        let parametrised = !parameters.is_empty()
+            || generic.is_some_and(|over| self.generic_name(over, file).is_some());
         match result {
             Ok(value) => {
-                self.memo.borrow_mut().insert((node, key), Ok(value.clone()));
+                self.memo
+                    .borrow_mut()
+                    .insert((node, key), Ok(value.clone()));
                 Ok(value)
             }
             Err(stop) if parametrised => Err(self.called_from(stop, &name, span)),
@@ -206,7 +295,9 @@ impl Evaluator<'_> {
     /// A finding inside a family, seen from where the member was asked for. Inside the library a
     /// stranger has nothing to mend, so the place becomes the call.
     fn called_from(&self, stop: Stop, name: &str, span: Span) -> Stop {
-        let Stop::Finding(mut finding) = stop else { return stop };
+        let Stop::Finding(mut finding) = stop else {
+            return stop;
+        };
         if finding.span == span || finding.span.source == span.source {
             return Stop::Finding(finding);
         }
@@ -216,7 +307,8 @@ impl Evaluator<'_> {
             finding.message = format!("{name}: {}", finding.message);
             finding = Box::new(finding.related(inside, format!("in the library's `{name}`")));
         } else {
-            finding = Box::new(finding.related(span, format!("asked for here, as a member of `{name}`")));
+            finding =
+                Box::new(finding.related(span, format!("asked for here, as a member of `{name}`")));
         }
         Stop::Finding(finding)
     }
@@ -237,8 +329,14 @@ impl Evaluator<'_> {
         span: Span,
         home: &Scope,
     ) -> Outcome<Vec<Value>> {
-        let names: Vec<&str> = parameters.iter().map(|parameter| parameter.name.text.as_str()).collect();
-        let optional: Vec<bool> = parameters.iter().map(|parameter| parameter.default.is_some()).collect();
+        let names: Vec<&str> = parameters
+            .iter()
+            .map(|parameter| parameter.name.text.as_str())
+            .collect();
+        let optional: Vec<bool> = parameters
+            .iter()
+            .map(|parameter| parameter.default.is_some())
+            .collect();
         let bound = bind_arguments(name, span, &names, &optional, given)?;
         let mut values = Vec::with_capacity(parameters.len());
         let mut inner = home.clone();
@@ -270,18 +368,25 @@ impl Evaluator<'_> {
             // A wide range need not be listed to see whether an integer lies in it.
             (ExpressionKind::Range(first, last), Value::Integer(_)) => {
                 let (first, last) = (self.evaluate(first, scope)?, self.evaluate(last, scope)?);
-                let order = |left: &Value, right: &Value| crate::value::compare(left, right).map_err(|trouble| Stop::from(trouble.at(domain.span)));
+                let order = |left: &Value, right: &Value| {
+                    crate::value::compare(left, right)
+                        .map_err(|trouble| Stop::from(trouble.at(domain.span)))
+                };
                 order(&first, value)?.is_le() && order(value, &last)?.is_le()
             }
             _ => {
                 let domain_value = self.evaluate(domain, scope)?;
-                crate::value::contains(value, &domain_value).map_err(|trouble| Stop::from(trouble.at(span)))?
+                crate::value::contains(value, &domain_value)
+                    .map_err(|trouble| Stop::from(trouble.at(span)))?
             }
         };
         if inside {
             return Ok(());
         }
-        let message = format!("`{parameter}` of `{callee}` is {value}, outside its domain {}", self.text(domain.span));
+        let message = format!(
+            "`{parameter}` of `{callee}` is {value}, outside its domain {}",
+            self.text(domain.span)
+        );
         Err(wrong(catalogue::BAD_ARGUMENT, span, message))
     }
 
@@ -293,11 +398,19 @@ impl Evaluator<'_> {
             }
             DeclarationKind::Let(declaration) => self.evaluate(&declaration.value, home),
             DeclarationKind::Matrix(declaration) => self.matrix_declared(declaration, home),
-            DeclarationKind::Code(declaration) => Ok(Value::Code(self.code_declared(declaration, home)?)),
-            DeclarationKind::Channel(declaration) => match self.evaluate(&declaration.model, home)? {
-                value @ Value::Channel(_) => Ok(value),
-                other => Err(mistyped(declaration.model.span, "a channel is bsc(rate) or bec(rate)", &other)),
-            },
+            DeclarationKind::Code(declaration) => {
+                Ok(Value::Code(self.code_declared(declaration, home)?))
+            }
+            DeclarationKind::Channel(declaration) => {
+                match self.evaluate(&declaration.model, home)? {
+                    value @ Value::Channel(_) => Ok(value),
+                    other => Err(mistyped(
+                        declaration.model.span,
+                        "a channel is bsc(rate) or bec(rate)",
+                        &other,
+                    )),
+                }
+            }
             DeclarationKind::Use(_) | DeclarationKind::Deliver(_) => Err(Stop::Reported),
         }
     }
@@ -313,7 +426,11 @@ impl Evaluator<'_> {
                 let field = scope.field.as_ref().expect("checked");
                 Ok(Value::Matrix(std::sync::Arc::new(incidence.matrix(field))))
             }
-            other => Err(mistyped(declaration.value.span, "a matrix is declared here", &other)),
+            other => Err(mistyped(
+                declaration.value.span,
+                "a matrix is declared here",
+                &other,
+            )),
         }
     }
 
@@ -328,14 +445,23 @@ impl Evaluator<'_> {
         };
         let code = match self.evaluate(&declaration.body, &scope)? {
             Value::Code(code) => code,
-            other => return Err(mistyped(declaration.body.span, "a code is declared here", &other)),
+            other => {
+                return Err(mistyped(
+                    declaration.body.span,
+                    "a code is declared here",
+                    &other,
+                ));
+            }
         };
         if let Some(stated) = stated.filter(|stated| stated != code.field()) {
             let over = declaration.over.as_ref().expect("a stated field");
             let finding = Finding::new(
                 catalogue::FIELD_MISMATCH,
                 over.span,
-                format!("the code is stated over {stated}, but what is built lies over {}", code.field()),
+                format!(
+                    "the code is stated over {stated}, but what is built lies over {}",
+                    code.field()
+                ),
             )
             .related(declaration.body.span, "built here");
             return Err(Stop::Finding(Box::new(finding)));

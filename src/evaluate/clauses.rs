@@ -69,13 +69,23 @@ impl Evaluator<'_> {
                 let mut counts = BTreeMap::new();
                 for (weight, count) in &weights.entries {
                     let at = self.natural(weight, of)?;
-                    let at = at.to_usize().filter(|&at| at <= of.code.length()).ok_or_else(|| {
-                        let message = format!("no word has weight {at}: the length is {}", of.code.length());
-                        wrong(catalogue::BAD_ARGUMENT, weight.span, message)
-                    })?;
+                    let at = at
+                        .to_usize()
+                        .filter(|&at| at <= of.code.length())
+                        .ok_or_else(|| {
+                            let message = format!(
+                                "no word has weight {at}: the length is {}",
+                                of.code.length()
+                            );
+                            wrong(catalogue::BAD_ARGUMENT, weight.span, message)
+                        })?;
                     let many = self.natural(count, of)?;
                     if counts.insert(at, many).is_some() {
-                        return Err(wrong(catalogue::BAD_ARGUMENT, weight.span, format!("weight {at} is claimed twice")));
+                        return Err(wrong(
+                            catalogue::BAD_ARGUMENT,
+                            weight.span,
+                            format!("weight {at} is claimed twice"),
+                        ));
                     }
                 }
                 counts.retain(|_, count| *count != BigUint::default());
@@ -96,10 +106,17 @@ impl Evaluator<'_> {
     fn expected(&self, bound: &Bound, of: &CompiledCode) -> Outcome<Expected> {
         let says = match &bound.kind {
             BoundKind::Open => None,
-            BoundKind::Exactly(expression) => Some((BinaryOperator::Equal, self.whole(expression, of)?)),
-            BoundKind::Compared(operator, expression) => Some((*operator, self.whole(expression, of)?)),
+            BoundKind::Exactly(expression) => {
+                Some((BinaryOperator::Equal, self.whole(expression, of)?))
+            }
+            BoundKind::Compared(operator, expression) => {
+                Some((*operator, self.whole(expression, of)?))
+            }
         };
-        Ok(Expected { span: bound.span, says })
+        Ok(Expected {
+            span: bound.span,
+            says,
+        })
     }
 
     fn whole(&self, expression: &Expression, of: &CompiledCode) -> Outcome<BigInt> {
@@ -111,8 +128,12 @@ impl Evaluator<'_> {
 
     fn natural(&self, expression: &Expression, of: &CompiledCode) -> Outcome<BigUint> {
         let number = self.whole(expression, of)?;
-        number
-            .to_biguint()
-            .ok_or_else(|| wrong(catalogue::BAD_ARGUMENT, expression.span, "a count is not negative".into()))
+        number.to_biguint().ok_or_else(|| {
+            wrong(
+                catalogue::BAD_ARGUMENT,
+                expression.span,
+                "a count is not negative".into(),
+            )
+        })
     }
 }

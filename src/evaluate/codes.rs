@@ -63,8 +63,14 @@ impl Evaluator<'_> {
             return Vec::new();
         };
         let file = self.program.graph[node].file;
-        let generic = declaration.over.as_ref().and_then(|over| self.generic_name(over, file));
-        let open = declaration.parameters.iter().any(|parameter| parameter.domain.is_none());
+        let generic = declaration
+            .over
+            .as_ref()
+            .and_then(|over| self.generic_name(over, file));
+        let open = declaration
+            .parameters
+            .iter()
+            .any(|parameter| parameter.domain.is_none());
         if self.program.broken(node) || generic.is_some() || open {
             return Vec::new();
         }
@@ -88,7 +94,10 @@ impl Evaluator<'_> {
             DeclarationKind::Let(declaration) => declaration.parameters.is_empty(),
             DeclarationKind::Matrix(declaration) => {
                 let file = self.program.graph[node].file;
-                let generic = declaration.over.as_ref().and_then(|over| self.generic_name(over, file));
+                let generic = declaration
+                    .over
+                    .as_ref()
+                    .and_then(|over| self.generic_name(over, file));
                 declaration.parameters.is_empty() && generic.is_none()
             }
             DeclarationKind::Field(_) | DeclarationKind::Channel(_) => true,
@@ -105,7 +114,12 @@ impl Evaluator<'_> {
 
     /// Evaluates one member of a family (or a plain code, with no values) given in the order of
     /// its parameters; what cannot be built is reported.
-    pub fn compile_member(&self, node: NodeIndex, values: Vec<Value>, span: Span) -> Option<CompiledCode> {
+    pub fn compile_member(
+        &self,
+        node: NodeIndex,
+        values: Vec<Value>,
+        span: Span,
+    ) -> Option<CompiledCode> {
         match self.try_member(node, values, span) {
             Ok(compiled) => Some(compiled),
             Err(stop) => {
@@ -118,7 +132,11 @@ impl Evaluator<'_> {
     fn try_member(&self, node: NodeIndex, values: Vec<Value>, span: Span) -> Outcome<CompiledCode> {
         let declaration = self.program.declaration(node);
         let DeclarationKind::Code(body) = &declaration.kind else {
-            return Err(wrong(catalogue::WRONG_TYPE, span, "a code is needed here".into()));
+            return Err(wrong(
+                catalogue::WRONG_TYPE,
+                span,
+                "a code is needed here".into(),
+            ));
         };
         let file = self.program.graph[node].file;
         let given = values
@@ -168,23 +186,47 @@ impl Evaluator<'_> {
         let scope = Scope::of_file(file);
         let (name, arguments) = match &expression.kind {
             ExpressionKind::Name(name) => (name.as_str(), &[][..]),
-            ExpressionKind::Call { function, arguments } => (function.text.as_str(), arguments.as_slice()),
-            _ => return Err(wrong(catalogue::WRONG_TYPE, expression.span, "a declared code is named here".into())),
+            ExpressionKind::Call {
+                function,
+                arguments,
+            } => (function.text.as_str(), arguments.as_slice()),
+            _ => {
+                return Err(wrong(
+                    catalogue::WRONG_TYPE,
+                    expression.span,
+                    "a declared code is named here".into(),
+                ));
+            }
         };
         let Some(node) = self.program.lookup(file, name) else {
-            return Err(wrong(catalogue::UNKNOWN_NAME, expression.span, format!("there is no code `{name}`")));
+            return Err(wrong(
+                catalogue::UNKNOWN_NAME,
+                expression.span,
+                format!("there is no code `{name}`"),
+            ));
         };
         let DeclarationKind::Code(declaration) = &self.program.declaration(node).kind else {
-            return Err(wrong(catalogue::WRONG_TYPE, expression.span, format!("`{name}` is no code")));
+            return Err(wrong(
+                catalogue::WRONG_TYPE,
+                expression.span,
+                format!("`{name}` is no code"),
+            ));
         };
         let mut values = vec![None; declaration.parameters.len()];
         for (place, argument) in arguments.iter().enumerate() {
             let at = match &argument.name {
                 None => Some(place),
-                Some(name) => declaration.parameters.iter().position(|known| known.name.text == name.text),
+                Some(name) => declaration
+                    .parameters
+                    .iter()
+                    .position(|known| known.name.text == name.text),
             };
             let Some(slot) = at.and_then(|at| values.get_mut(at)) else {
-                return Err(wrong(catalogue::BAD_ARGUMENT, argument.value.span, format!("`{name}` has no such argument")));
+                return Err(wrong(
+                    catalogue::BAD_ARGUMENT,
+                    argument.value.span,
+                    format!("`{name}` has no such argument"),
+                ));
             };
             *slot = Some(self.evaluate(&argument.value, &scope)?);
         }
@@ -210,22 +252,36 @@ impl Evaluator<'_> {
     ) -> Outcome<Option<Vec<String>>> {
         let mut found: Option<Vec<String>> = None;
         for clause in &declaration.clauses {
-            let ClauseKind::Bits(groups) = &clause.kind else { continue };
+            let ClauseKind::Bits(groups) = &clause.kind else {
+                continue;
+            };
             if found.is_some() {
-                return Err(wrong(catalogue::BAD_BITS, clause.span, "the bits are named twice".into()));
+                return Err(wrong(
+                    catalogue::BAD_BITS,
+                    clause.span,
+                    "the bits are named twice".into(),
+                ));
             }
             let mut names = Vec::new();
             for group in groups {
                 self.group_names(group, scope, &mut names, code.length(), clause.span)?;
             }
             if names.len() != code.length() {
-                let message = format!("{} bits are named, but the code has {} positions", names.len(), code.length());
+                let message = format!(
+                    "{} bits are named, but the code has {} positions",
+                    names.len(),
+                    code.length()
+                );
                 return Err(wrong(catalogue::BAD_BITS, clause.span, message));
             }
             let mut sorted: Vec<&String> = names.iter().collect();
             sorted.sort();
             if let Some(pair) = sorted.windows(2).find(|pair| pair[0] == pair[1]) {
-                return Err(wrong(catalogue::BAD_BITS, clause.span, format!("two bits are called {}", pair[0])));
+                return Err(wrong(
+                    catalogue::BAD_BITS,
+                    clause.span,
+                    format!("two bits are called {}", pair[0]),
+                ));
             }
             found = Some(names);
         }
@@ -246,15 +302,26 @@ impl Evaluator<'_> {
         };
         let end = |expression: &Expression| match self.evaluate(expression, scope)? {
             Value::Integer(number) => Ok(number),
-            other => Err(super::expression::mistyped(expression.span, "a bit's index is an integer", &other)),
+            other => Err(super::expression::mistyped(
+                expression.span,
+                "a bit's index is an integer",
+                &other,
+            )),
         };
         let (from, to) = (end(from)?, end(to)?);
         let count = (&from - &to).magnitude().clone() + 1u32;
-        if count.to_usize().is_none_or(|count| names.len() + count > length) {
+        if count
+            .to_usize()
+            .is_none_or(|count| names.len() + count > length)
+        {
             let message = format!("these names cover more than the code's {length} positions");
             return Err(wrong(catalogue::BAD_BITS, span, message));
         }
-        let step = if from <= to { BigInt::one() } else { -BigInt::one() };
+        let step = if from <= to {
+            BigInt::one()
+        } else {
+            -BigInt::one()
+        };
         let mut at = from;
         loop {
             names.push(format!("{}[{at}]", group.name.text));

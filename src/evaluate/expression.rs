@@ -3,7 +3,9 @@
 use super::{Evaluator, Measured, Outcome, Scope, Stop};
 use crate::finding::{Finding, catalogue};
 use crate::source::Span;
-use crate::syntax::tree::{BinaryOperator, Comprehension, Expression, ExpressionKind, UnaryOperator};
+use crate::syntax::tree::{
+    BinaryOperator, Comprehension, Expression, ExpressionKind, UnaryOperator,
+};
 use crate::value::{self, SET_SIZE, Trouble, Value};
 use num_traits::ToPrimitive;
 use std::cmp::Ordering;
@@ -23,9 +25,10 @@ impl Evaluator<'_> {
             ExpressionKind::Boolean(value) => Ok(Value::Boolean(*value)),
             ExpressionKind::Text(text) => Ok(Value::Text(text.as_str().into())),
             ExpressionKind::Name(name) => self.name(name, span, scope),
-            ExpressionKind::Call { function, arguments } => {
-                self.call(function, arguments, span, scope)
-            }
+            ExpressionKind::Call {
+                function,
+                arguments,
+            } => self.call(function, arguments, span, scope),
             ExpressionKind::Index(base, index) => self.index(base, index, scope),
             ExpressionKind::Member(base, name) => {
                 let value = self.evaluate(base, scope)?;
@@ -49,14 +52,20 @@ impl Evaluator<'_> {
             ExpressionKind::Comprehension(comprehension) => {
                 self.comprehension(comprehension, span, scope)
             }
-            ExpressionKind::Conditional { condition, then, otherwise } => {
+            ExpressionKind::Conditional {
+                condition,
+                then,
+                otherwise,
+            } => {
                 if self.condition(condition, scope)? {
                     self.evaluate(then, scope)
                 } else {
                     self.evaluate(otherwise, scope)
                 }
             }
-            ExpressionKind::Field(literal) => Ok(Value::Field(self.field_literal(literal, span, scope)?)),
+            ExpressionKind::Field(literal) => {
+                Ok(Value::Field(self.field_literal(literal, span, scope)?))
+            }
             ExpressionKind::Rows(rows) => self.rows(rows, span, scope),
             ExpressionKind::Blocks(rows) => self.blocks(rows, span, scope),
             ExpressionKind::Circulants { size, rows } => self.circulants(size, rows, span, scope),
@@ -76,7 +85,11 @@ impl Evaluator<'_> {
     pub fn condition(&self, expression: &Expression, scope: &Scope) -> Outcome<bool> {
         match self.evaluate(expression, scope)? {
             Value::Boolean(value) => Ok(value),
-            other => Err(mistyped(expression.span, "a condition is true or false", &other)),
+            other => Err(mistyped(
+                expression.span,
+                "a condition is true or false",
+                &other,
+            )),
         }
     }
 
@@ -100,11 +113,20 @@ impl Evaluator<'_> {
                     let message = format!("{what} is {number}, but it lies in {least}..{most}");
                     wrong(catalogue::BAD_ARGUMENT, expression.span, message)
                 }),
-            other => Err(mistyped(expression.span, &format!("{what} is an integer"), &other)),
+            other => Err(mistyped(
+                expression.span,
+                &format!("{what} is an integer"),
+                &other,
+            )),
         }
     }
 
-    fn unary(&self, operator: UnaryOperator, operand: &Expression, scope: &Scope) -> Outcome<Value> {
+    fn unary(
+        &self,
+        operator: UnaryOperator,
+        operand: &Expression,
+        scope: &Scope,
+    ) -> Outcome<Value> {
         match operator {
             UnaryOperator::Not => Ok(Value::Boolean(!self.condition(operand, scope)?)),
             UnaryOperator::Negate => {
@@ -127,7 +149,11 @@ impl Evaluator<'_> {
             // The right side is evaluated only when it matters.
             let first = self.condition(left, scope)?;
             let settled = first == (operator == Op::Or);
-            return Ok(Value::Boolean(if settled { first } else { self.condition(right, scope)? }));
+            return Ok(Value::Boolean(if settled {
+                first
+            } else {
+                self.condition(right, scope)?
+            }));
         }
         let (left, right) = (self.evaluate(left, scope)?, self.evaluate(right, scope)?);
         let ordered = |test: fn(Ordering) -> bool| {
@@ -152,10 +178,20 @@ impl Evaluator<'_> {
         let count = match &value {
             Value::Vector(_, entries) => entries.len(),
             Value::List(items) | Value::Set(items) => items.len(),
-            other => return Err(mistyped(base.span, "only vectors and lists have entries", other)),
+            other => {
+                return Err(mistyped(
+                    base.span,
+                    "only vectors and lists have entries",
+                    other,
+                ));
+            }
         };
         if count == 0 {
-            return Err(wrong(catalogue::BAD_ARGUMENT, index.span, "this has no entries".into()));
+            return Err(wrong(
+                catalogue::BAD_ARGUMENT,
+                index.span,
+                "this has no entries".into(),
+            ));
         }
         let at = self.size(index, scope, "an index", 0, count - 1)?;
         Ok(match &value {
@@ -246,7 +282,11 @@ pub(super) fn wrong(code: crate::finding::Code, span: Span, message: String) -> 
 
 /// A value of the wrong kind.
 pub(super) fn mistyped(span: Span, rule: &str, value: &Value) -> Stop {
-    wrong(catalogue::WRONG_TYPE, span, format!("{rule}; this is {}", value.kind()))
+    wrong(
+        catalogue::WRONG_TYPE,
+        span,
+        format!("{rule}; this is {}", value.kind()),
+    )
 }
 
 fn too_many(span: Span) -> Stop {

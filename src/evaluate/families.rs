@@ -6,7 +6,9 @@ use crate::algebra::{Field, Matrix};
 use crate::code::Code;
 use crate::finding::{Finding, catalogue};
 use crate::source::Span;
-use crate::syntax::tree::{Columns, Expression, MonomialShape, Monomials, Parameter, Pick, PointShape, Points};
+use crate::syntax::tree::{
+    Columns, Expression, MonomialShape, Monomials, Parameter, Pick, PointShape, Points,
+};
 use crate::value::{self, CODE_LENGTH, Value};
 use std::cmp::Ordering;
 use std::sync::Arc;
@@ -37,7 +39,10 @@ impl Evaluator<'_> {
         let mut chosen: Vec<(Vec<Value>, Arc<Vec<u32>>)> = Vec::new();
         for index in 0..count {
             let vector = Arc::new(vector_at(index, field.order(), height));
-            let inner = scope.with(&columns.variable.text, Value::Vector(field.clone(), vector.clone()));
+            let inner = scope.with(
+                &columns.variable.text,
+                Value::Vector(field.clone(), vector.clone()),
+            );
             let wanted = match &columns.condition {
                 Some(condition) => self.condition(condition, &inner)?,
                 None => true,
@@ -51,7 +56,11 @@ impl Evaluator<'_> {
             }
             chosen.push((keys, vector));
             if chosen.len() > CODE_LENGTH {
-                return Err(wrong(catalogue::LIMIT, span, format!("more than {CODE_LENGTH} columns")));
+                return Err(wrong(
+                    catalogue::LIMIT,
+                    span,
+                    format!("more than {CODE_LENGTH} columns"),
+                ));
             }
         }
         self.sort(columns, &mut chosen, span)?;
@@ -75,7 +84,12 @@ impl Evaluator<'_> {
         Ok(Value::Matrix(Arc::new(matrix)))
     }
 
-    fn sort(&self, columns: &Columns, chosen: &mut [(Vec<Value>, Arc<Vec<u32>>)], span: Span) -> Outcome<()> {
+    fn sort(
+        &self,
+        columns: &Columns,
+        chosen: &mut [(Vec<Value>, Arc<Vec<u32>>)],
+        span: Span,
+    ) -> Outcome<()> {
         let mut trouble = None;
         chosen.sort_by(|(left, _), (right, _)| {
             for (at, key) in columns.sort.iter().enumerate() {
@@ -111,7 +125,10 @@ impl Evaluator<'_> {
     pub(super) fn points(&self, points: &Points, span: Span, scope: &Scope) -> Outcome<Value> {
         let field = self.family_field(span, scope, "points")?;
         let (variables, names) = match &points.shape {
-            PointShape::Variables(count) => (self.size(count, scope, "the number of variables", 0, 64)?, None),
+            PointShape::Variables(count) => (
+                self.size(count, scope, "the number of variables", 0, 64)?,
+                None,
+            ),
             PointShape::Named(names) => (names.len(), Some(names)),
         };
         let count = self.candidates(field.order(), variables, span, "points")?;
@@ -123,11 +140,15 @@ impl Evaluator<'_> {
                 match names {
                     Some(names) => {
                         for (name, &coordinate) in names.iter().zip(&point) {
-                            inner = inner.with(&name.text, Value::Element(field.clone(), coordinate));
+                            inner =
+                                inner.with(&name.text, Value::Element(field.clone(), coordinate));
                         }
                     }
                     None => {
-                        inner = inner.with("point", Value::Vector(field.clone(), Arc::new(point.clone())));
+                        inner = inner.with(
+                            "point",
+                            Value::Vector(field.clone(), Arc::new(point.clone())),
+                        );
                     }
                 }
                 if !self.condition(condition, &inner)? {
@@ -136,14 +157,26 @@ impl Evaluator<'_> {
             }
             coordinates.push(point);
         }
-        Ok(Value::Points(Arc::new(value::Points { field, variables, coordinates })))
+        Ok(Value::Points(Arc::new(value::Points {
+            field,
+            variables,
+            coordinates,
+        })))
     }
 
     /// `monomials in m variables where …`, `monomials x^i * y^j where …`
-    pub(super) fn monomials(&self, monomials: &Monomials, span: Span, scope: &Scope) -> Outcome<Value> {
+    pub(super) fn monomials(
+        &self,
+        monomials: &Monomials,
+        span: Span,
+        scope: &Scope,
+    ) -> Outcome<Value> {
         let field = self.family_field(span, scope, "monomials")?;
         let (variables, names) = match &monomials.shape {
-            MonomialShape::Variables(count) => (self.size(count, scope, "the number of variables", 0, 64)?, None),
+            MonomialShape::Variables(count) => (
+                self.size(count, scope, "the number of variables", 0, 64)?,
+                None,
+            ),
             MonomialShape::Pattern(pairs) => (pairs.len(), Some(pairs)),
         };
         let count = self.candidates(field.order(), variables, span, "monomials")?;
@@ -164,21 +197,39 @@ impl Evaluator<'_> {
         }
         // By degree, then the first variable's exponent highest first.
         exponents.sort_by(|left, right| {
-            let degree = |vector: &[u32]| vector.iter().map(|&exponent| u64::from(exponent)).sum::<u64>();
-            degree(left).cmp(&degree(right)).then_with(|| right.cmp(left))
+            let degree = |vector: &[u32]| {
+                vector
+                    .iter()
+                    .map(|&exponent| u64::from(exponent))
+                    .sum::<u64>()
+            };
+            degree(left)
+                .cmp(&degree(right))
+                .then_with(|| right.cmp(left))
         });
-        Ok(Value::Monomials(Arc::new(value::Monomials { variables, exponents })))
+        Ok(Value::Monomials(Arc::new(value::Monomials {
+            variables,
+            exponents,
+        })))
     }
 
     /// All choices of the parameters' values, leftmost slowest.
-    pub(super) fn choices_of(&self, parameters: &[Parameter], scope: &Scope, span: Span) -> Outcome<Vec<Vec<Value>>> {
+    pub(super) fn choices_of(
+        &self,
+        parameters: &[Parameter],
+        scope: &Scope,
+        span: Span,
+    ) -> Outcome<Vec<Vec<Value>>> {
         let mut choices: Vec<Vec<Value>> = vec![Vec::new()];
         for (at, parameter) in parameters.iter().enumerate() {
             let Some(domain) = &parameter.domain else {
                 return Err(wrong(
                     catalogue::BAD_ARGUMENT,
                     parameter.name.span,
-                    format!("the domain of `{}` is not stated, as in `{0} in 2..8`", parameter.name.text),
+                    format!(
+                        "the domain of `{}` is not stated, as in `{0} in 2..8`",
+                        parameter.name.text
+                    ),
                 ));
             };
             let mut widened = Vec::new();
@@ -193,7 +244,8 @@ impl Evaluator<'_> {
                     next.push(value);
                     widened.push(next);
                     if widened.len() > MEMBERS {
-                        let message = format!("more than {MEMBERS} members would have to be looked at");
+                        let message =
+                            format!("more than {MEMBERS} members would have to be looked at");
                         return Err(wrong(catalogue::LIMIT, span, message));
                     }
                 }
@@ -219,7 +271,13 @@ impl Evaluator<'_> {
             // A member that cannot be built is no candidate; only if none can is it a mistake.
             let code = match self.evaluate(&pick.from, &inner) {
                 Ok(Value::Code(code)) => code,
-                Ok(other) => return Err(mistyped(pick.from.span, "`pick` chooses among codes", &other)),
+                Ok(other) => {
+                    return Err(mistyped(
+                        pick.from.span,
+                        "`pick` chooses among codes",
+                        &other,
+                    ));
+                }
                 Err(super::Stop::Finding(finding)) if finding.code != catalogue::LIMIT => {
                     impossible.get_or_insert(finding);
                     continue;
@@ -237,7 +295,12 @@ impl Evaluator<'_> {
                 None => true,
                 Some((known, ..)) => {
                     let order = placed(value::compare(&measure, known), pick.measure.span)?;
-                    order == if pick.maximize { Ordering::Greater } else { Ordering::Less }
+                    order
+                        == if pick.maximize {
+                            Ordering::Greater
+                        } else {
+                            Ordering::Less
+                        }
                 }
             };
             if better {
@@ -248,7 +311,10 @@ impl Evaluator<'_> {
             Some((measure, code, choice)) => {
                 let measured = self.text(pick.measure.span);
                 Ok(Value::Code(code.named(
-                    format!("{} with {choice} ({measured} = {measure})", self.text(pick.from.span)),
+                    format!(
+                        "{} with {choice} ({measured} = {measure})",
+                        self.text(pick.from.span)
+                    ),
                     span,
                 )))
             }
@@ -256,7 +322,12 @@ impl Evaluator<'_> {
         }
     }
 
-    fn nothing_to_pick(&self, total: usize, impossible: Option<Box<Finding>>, span: Span) -> super::Stop {
+    fn nothing_to_pick(
+        &self,
+        total: usize,
+        impossible: Option<Box<Finding>>,
+        span: Span,
+    ) -> super::Stop {
         let mut finding = Finding::new(
             catalogue::EMPTY_CHOICE,
             span,
@@ -270,7 +341,12 @@ impl Evaluator<'_> {
     }
 
     /// `EXPR over FIELD`
-    pub(super) fn over(&self, value: &Expression, field: &Expression, scope: &Scope) -> Outcome<Value> {
+    pub(super) fn over(
+        &self,
+        value: &Expression,
+        field: &Expression,
+        scope: &Scope,
+    ) -> Outcome<Value> {
         let stated = self.field_of(field, scope)?;
         let inner = self.evaluate(value, &scope.over(&stated))?;
         let own = match &inner {
@@ -292,7 +368,11 @@ impl Evaluator<'_> {
     pub(super) fn field_of(&self, expression: &Expression, scope: &Scope) -> Outcome<Field> {
         match self.evaluate(expression, scope)? {
             Value::Field(field) => Ok(field),
-            other => Err(mistyped(expression.span, "a field is needed after `over`", &other)),
+            other => Err(mistyped(
+                expression.span,
+                "a field is needed after `over`",
+                &other,
+            )),
         }
     }
 }

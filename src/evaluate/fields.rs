@@ -15,25 +15,42 @@ const ORDER: u64 = 1 << 24;
 
 impl Evaluator<'_> {
     /// `GF(q) where a^m = …` or `GF(q) modulus …` or `GF(q)`.
-    pub(super) fn field_literal(&self, literal: &FieldLiteral, span: Span, scope: &Scope) -> Outcome<Field> {
+    pub(super) fn field_literal(
+        &self,
+        literal: &FieldLiteral,
+        span: Span,
+        scope: &Scope,
+    ) -> Outcome<Field> {
         let order_span = literal.order.span;
         let order = match self.evaluate(&literal.order, scope)? {
             Value::Integer(number) => number,
-            other => return Err(mistyped(order_span, "the order of a field is an integer", &other)),
+            other => {
+                return Err(mistyped(
+                    order_span,
+                    "the order of a field is an integer",
+                    &other,
+                ));
+            }
         };
         let Some((p, m)) = order.to_u64().and_then(prime_power) else {
             return Err(no_such_order(&order, order_span));
         };
         match &literal.modulus {
             None => Field::conway(p, m).map_err(|error| self.refused(&error, span, "x")),
-            Some(Modulus::Relation { symbol, left, right }) => {
+            Some(Modulus::Relation {
+                symbol,
+                left,
+                right,
+            }) => {
                 let place = left.span.to(right.span);
                 // The generator stands for the indeterminate while its relation is read.
                 let variable = Value::Polynomial(Arc::new(Polynomial::variable(0)));
                 let inner = scope.with(&symbol.text, variable);
                 let left = self.polynomial(left, &inner)?;
                 let right = self.polynomial(right, &inner)?;
-                let modulus = left.add(&right.negate()).map_err(|trouble| trouble.at(place))?;
+                let modulus = left
+                    .add(&right.negate())
+                    .map_err(|trouble| trouble.at(place))?;
                 let field = self.with_modulus(p, m, &modulus, place, true, &symbol.text)?;
                 Ok(field.with_symbol(&symbol.text))
             }
@@ -47,8 +64,14 @@ impl Evaluator<'_> {
     fn polynomial(&self, expression: &Expression, scope: &Scope) -> Outcome<Polynomial> {
         match self.evaluate(expression, scope)? {
             Value::Polynomial(polynomial) => Ok((*polynomial).clone()),
-            Value::Integer(number) => Ok(Polynomial::constant(crate::value::Coefficient::Integer(number))),
-            other => Err(mistyped(expression.span, "a modulus is a polynomial", &other)),
+            Value::Integer(number) => Ok(Polynomial::constant(crate::value::Coefficient::Integer(
+                number,
+            ))),
+            other => Err(mistyped(
+                expression.span,
+                "a modulus is a polynomial",
+                &other,
+            )),
         }
     }
 
@@ -73,14 +96,22 @@ impl Evaluator<'_> {
                     span,
                     format!("the modulus has degree {degree}, but GF({p}^{m}) needs degree {m}"),
                 )
-                .help(format!("write a relation for {symbol}^{m}, or GF({p}^{degree})")),
+                .help(format!(
+                    "write a relation for {symbol}^{m}, or GF({p}^{degree})"
+                )),
             )
             .into());
         }
         // A multiple of the monic modulus says the same.
-        let scale = prime.inv(coefficients[m as usize]).expect("a leading coefficient");
-        let monic: Vec<u32> = coefficients.iter().map(|&entry| prime.mul(entry, scale)).collect();
-        Field::with_modulus(p as u32, &monic, primitive).map_err(|error| self.refused(&error, span, symbol))
+        let scale = prime
+            .inv(coefficients[m as usize])
+            .expect("a leading coefficient");
+        let monic: Vec<u32> = coefficients
+            .iter()
+            .map(|&entry| prime.mul(entry, scale))
+            .collect();
+        Field::with_modulus(p as u32, &monic, primitive)
+            .map_err(|error| self.refused(&error, span, symbol))
     }
 
     fn refused(&self, error: &FieldError, span: Span, symbol: &str) -> Stop {
@@ -124,7 +155,9 @@ fn no_such_order(order: &num_bigint::BigInt, span: Span) -> Stop {
         return wrong(
             catalogue::LIMIT,
             span,
-            format!("GF({order}) is too large, or {order} is no prime power: prime fields go to 2^31, others to {ORDER} elements"),
+            format!(
+                "GF({order}) is too large, or {order} is no prime power: prime fields go to 2^31, others to {ORDER} elements"
+            ),
         );
     }
     let near = order

@@ -25,7 +25,12 @@ impl Evaluator<'_> {
     }
 
     /// `| 1 0 | | 0 1 |`
-    pub(super) fn rows(&self, rows: &[Vec<Expression>], span: Span, scope: &Scope) -> Outcome<Value> {
+    pub(super) fn rows(
+        &self,
+        rows: &[Vec<Expression>],
+        span: Span,
+        scope: &Scope,
+    ) -> Outcome<Value> {
         let field = self.field_here(span, scope, "this matrix")?;
         let columns = rows.first().map_or(0, Vec::len);
         let mut entries = Vec::with_capacity(rows.len());
@@ -34,7 +39,10 @@ impl Evaluator<'_> {
                 return Err(wrong(
                     catalogue::SHAPE,
                     covering(row).unwrap_or(span),
-                    format!("row {at} has {} entries, but row 0 has {columns}", row.len()),
+                    format!(
+                        "row {at} has {} entries, but row 0 has {columns}",
+                        row.len()
+                    ),
                 ));
             }
             let mut values = Vec::with_capacity(columns);
@@ -44,11 +52,18 @@ impl Evaluator<'_> {
             }
             entries.push(values);
         }
-        Ok(Value::Matrix(Arc::new(Matrix::from_rows(&field, columns, &entries))))
+        Ok(Value::Matrix(Arc::new(Matrix::from_rows(
+            &field, columns, &entries,
+        ))))
     }
 
     /// `blocks | A B | | C D |`; a row of blocks is as high as its blocks, a plain 0 fills.
-    pub(super) fn blocks(&self, rows: &[Vec<Expression>], span: Span, scope: &Scope) -> Outcome<Value> {
+    pub(super) fn blocks(
+        &self,
+        rows: &[Vec<Expression>],
+        span: Span,
+        scope: &Scope,
+    ) -> Outcome<Value> {
         let mut whole: Option<Matrix> = None;
         for row in rows {
             let mut line: Option<Matrix> = None;
@@ -65,7 +80,11 @@ impl Evaluator<'_> {
                             return Err(wrong(
                                 catalogue::SHAPE,
                                 block.span,
-                                format!("this block has {} rows, the one before it {}", matrix.rows(), line.rows()),
+                                format!(
+                                    "this block has {} rows, the one before it {}",
+                                    matrix.rows(),
+                                    line.rows()
+                                ),
                             ));
                         }
                         self.fits(line.rows(), line.columns() + matrix.columns(), span)?;
@@ -83,7 +102,11 @@ impl Evaluator<'_> {
                         return Err(wrong(
                             catalogue::SHAPE,
                             place,
-                            format!("this row of blocks has {} columns, the ones above {}", line.columns(), whole.columns()),
+                            format!(
+                                "this row of blocks has {} columns, the ones above {}",
+                                line.columns(),
+                                whole.columns()
+                            ),
                         ));
                     }
                     self.fits(whole.rows() + line.rows(), whole.columns(), span)?;
@@ -93,7 +116,11 @@ impl Evaluator<'_> {
         }
         match whole {
             Some(matrix) => Ok(Value::Matrix(Arc::new(matrix))),
-            None => Err(wrong(catalogue::SHAPE, span, "there are no blocks here".into())),
+            None => Err(wrong(
+                catalogue::SHAPE,
+                span,
+                "there are no blocks here".into(),
+            )),
         }
     }
 
@@ -113,14 +140,18 @@ impl Evaluator<'_> {
         for (block_row, row) in rows.iter().enumerate() {
             if row.len() != width {
                 let place = row.iter().flatten().next().map_or(span, |entry| entry.span);
-                let message = format!("row {block_row} has {} blocks, but row 0 has {width}", row.len());
+                let message = format!(
+                    "row {block_row} has {} blocks, but row 0 has {width}",
+                    row.len()
+                );
                 return Err(wrong(catalogue::SHAPE, place, message));
             }
             for (block_column, shift) in row.iter().enumerate() {
                 let Some(shift) = shift else { continue };
                 let shift = self.size(shift, scope, "a shift", 0, size - 1)?;
                 for at in 0..size {
-                    entries[block_row * size + at].push((block_column * size + (at + shift) % size, 1));
+                    entries[block_row * size + at]
+                        .push((block_column * size + (at + shift) % size, 1));
                 }
             }
         }
@@ -132,13 +163,19 @@ impl Evaluator<'_> {
         if one.field() == other.field() {
             return Ok(());
         }
-        let message = format!("this block is over {}, the ones before it over {}", other.field(), one.field());
+        let message = format!(
+            "this block is over {}, the ones before it over {}",
+            other.field(),
+            one.field()
+        );
         Err(wrong(catalogue::FIELD_MISMATCH, span, message))
     }
 
     pub(super) fn fits(&self, rows: usize, columns: usize, span: Span) -> Outcome<()> {
         if rows.saturating_mul(columns) > MATRIX_ENTRIES {
-            let message = format!("a {rows} x {columns} matrix has more than the {MATRIX_ENTRIES} entries allowed");
+            let message = format!(
+                "a {rows} x {columns} matrix has more than the {MATRIX_ENTRIES} entries allowed"
+            );
             return Err(wrong(catalogue::LIMIT, span, message));
         }
         Ok(())

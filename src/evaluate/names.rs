@@ -54,11 +54,17 @@ impl Evaluator<'_> {
         if let Some(value) = self.generator(name, scope) {
             return Ok(value);
         }
-        if let Some(index) = crate::value::VARIABLES.iter().position(|&known| known == name) {
+        if let Some(index) = crate::value::VARIABLES
+            .iter()
+            .position(|&known| known == name)
+        {
             return Ok(Value::Polynomial(Arc::new(Polynomial::variable(index))));
         }
         if let Some(function) = construct::function(name)
-            && function.parameters.iter().all(|parameter| parameter.optional)
+            && function
+                .parameters
+                .iter()
+                .all(|parameter| parameter.optional)
         {
             let call = self.bind(name, span, function.parameters, Vec::new(), scope)?;
             return Ok((function.run)(&call)?);
@@ -80,10 +86,13 @@ impl Evaluator<'_> {
         }
         let mut found = None;
         for node in self.program.graph.node_indices() {
-            if self.program.graph[node].kind != NodeKind::Field || self.program.graph[node].file != scope.file {
+            if self.program.graph[node].kind != NodeKind::Field
+                || self.program.graph[node].file != scope.file
+            {
                 continue;
             }
-            if let Ok(Value::Field(field)) = self.declared(node, Vec::new(), self.program.graph[node].span, scope)
+            if let Ok(Value::Field(field)) =
+                self.declared(node, Vec::new(), self.program.graph[node].span, scope)
                 && field.symbol() == name
             {
                 if found.is_some() {
@@ -112,7 +121,11 @@ impl Evaluator<'_> {
     /// `VALUE.NAME`: a quantity of a code.
     pub(super) fn member(&self, value: &Value, name: &Name, span: Span) -> Outcome<Value> {
         let Value::Code(code) = value else {
-            let message = format!("only codes have quantities such as `.{}`; this is {}", name.text, value.kind());
+            let message = format!(
+                "only codes have quantities such as `.{}`; this is {}",
+                name.text,
+                value.kind()
+            );
             return Err(wrong(catalogue::WRONG_TYPE, span, message));
         };
         match self.measures.measure(code, &name.text, &[]) {
@@ -137,6 +150,14 @@ impl Evaluator<'_> {
         scope: &Scope,
     ) -> Outcome<Call<'c>> {
         let file = &self.program.files[scope.file].name;
-        Ok(Call::bind(name, span, parameters, given, scope.field.clone(), self.loader, file)?)
+        Ok(Call::bind(
+            name,
+            span,
+            parameters,
+            given,
+            scope.field.clone(),
+            self.loader,
+            file,
+        )?)
     }
 }

@@ -73,13 +73,15 @@ impl<'t> Walk<'t, '_> {
                 self.expression(&it.value);
             }
             DeclarationKind::Matrix(it) => {
-                self.parameters(&it.parameters);
+                // A domain may speak of the field: it comes first.
                 self.over(&it.over, !it.parameters.is_empty());
+                self.parameters(&it.parameters);
                 self.expression(&it.value);
             }
             DeclarationKind::Code(it) => {
-                self.parameters(&it.parameters);
+                // A domain may speak of the field: it comes first.
                 self.over(&it.over, !it.parameters.is_empty());
+                self.parameters(&it.parameters);
                 self.expression(&it.body);
                 self.clauses(&it.clauses);
             }

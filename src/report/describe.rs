@@ -1,11 +1,10 @@
 //! Fills the plain data of a report from what was derived.
 
 use super::model::{
-    CodeReport, DistanceReport, Ground, Interval, Measure, PropertyReport, RequirementReport, Side, StepReport,
-    Weights, Witness,
+    CodeReport, DistanceReport, Ground, Interval, Measure, PropertyReport, RequirementReport, Side,
+    StepReport, Weights, Witness,
 };
 use crate::code::{self, Code, Distance};
-use crate::derive::search::bounds;
 use crate::derive::{Effort, Session, properties, structure, support};
 use crate::evaluate::{CompiledCode, Evaluator};
 use crate::project::{Checked, View};
@@ -22,15 +21,26 @@ pub fn describe(view: &View, checked: &Checked) -> CodeReport {
     let compiled = &checked.compiled;
     let code = &compiled.code;
     let session = view.session;
-    let mut report = CodeReport::new(&compiled.name, code.field(), code.length(), code.dimension());
+    let mut report = CodeReport::new(
+        &compiled.name,
+        code.field(),
+        code.length(),
+        code.dimension(),
+    );
     for (name, value) in &compiled.arguments {
         report.arguments.insert(name.clone(), argument(value));
     }
     report.documentation = compiled.documentation.clone();
     report.d = distance(session, code);
-    report.weights = session.weights_by(code, Effort::Full).map(|weights| Weights(weights.counts));
-    report.dual_weights = session.dual_weights(code, Effort::Full).map(|weights| Weights(weights.counts));
-    report.covering_radius = session.covering_radius(code).map(|radius| Interval::exact(radius as u64));
+    report.weights = session
+        .weights_by(code, Effort::Full)
+        .map(|weights| Weights(weights.counts));
+    report.dual_weights = session
+        .dual_weights(code, Effort::Full)
+        .map(|weights| Weights(weights.counts));
+    report.covering_radius = session
+        .covering_radius(code)
+        .map(|radius| Interval::exact(radius as u64));
     largest_distances(code, &mut report);
     for property in properties::PROPERTIES {
         let judgement = (property.decide)(session, code);
@@ -119,7 +129,9 @@ fn largest_distances(code: &Code, report: &mut CodeReport) {
 }
 
 fn measures(code: &Code, report: &mut CodeReport) {
-    let Some(check) = code.check_matrix_as_built() else { return };
+    let Some(check) = code.check_matrix_as_built() else {
+        return;
+    };
     if check.rows().saturating_mul(check.columns()) > ENTRIES {
         return;
     }
@@ -154,7 +166,11 @@ fn steps(session: &Session, code: &Code) -> Vec<StepReport> {
         .iter()
         .enumerate()
         .map(|(at, step)| {
-            let effort = if at == last { Effort::Full } else { Effort::Small };
+            let effort = if at == last {
+                Effort::Full
+            } else {
+                Effort::Small
+            };
             StepReport {
                 text: step.origin().text.clone(),
                 n: step.length(),
@@ -220,5 +236,14 @@ pub fn summary(view: &View, checked: &Checked) -> Summary {
         k: code.dimension(),
         d: interval(&view.session.distance_by(code, Effort::Full)),
         requirements: checked.verdicts.clauses.iter().map(requirement).collect(),
+    }
+}
+
+mod bounds {
+    pub fn all(_q: u64, n: usize, k: usize) -> Vec<(&'static str, usize)> {
+        vec![("singleton", n - k + 1)]
+    }
+    pub fn gilbert_varshamov(_q: u64, _n: usize, _k: usize) -> Option<usize> {
+        None
     }
 }

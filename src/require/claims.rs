@@ -53,7 +53,11 @@ impl Court<'_> {
         let code = &compiled.code;
         let (actual, finding_code, grounds) = match which {
             "n" => (code.length(), catalogue::CLAIM_LENGTH, "positions"),
-            _ => (code.dimension(), catalogue::CLAIM_DIMENSION, "n minus the rank of the checks"),
+            _ => (
+                code.dimension(),
+                catalogue::CLAIM_DIMENSION,
+                "n minus the rank of the checks",
+            ),
         };
         if expected.holds(actual) {
             return Judgement::holds(format!("{which} = {actual}"));
@@ -80,13 +84,22 @@ impl Court<'_> {
         Judgement::fails(format!("{which} = {actual}"))
     }
 
-    fn distance_claim(&self, compiled: &CompiledCode, expected: &Expected, verdicts: &mut Verdicts) -> Judgement {
+    fn distance_claim(
+        &self,
+        compiled: &CompiledCode,
+        expected: &Expected,
+        verdicts: &mut Verdicts,
+    ) -> Judgement {
         let Some((operator, wanted)) = &expected.says else {
             return Judgement::holds("d is left open");
         };
         if compiled.code.dimension() == 0 {
-            let message = format!("{} holds only the zero word, so it has no distance", compiled.title());
-            let finding = Finding::new(catalogue::CLAIM_DISTANCE, expected.span, message).help("write `_` for d");
+            let message = format!(
+                "{} holds only the zero word, so it has no distance",
+                compiled.title()
+            );
+            let finding = Finding::new(catalogue::CLAIM_DISTANCE, expected.span, message)
+                .help("write `_` for d");
             verdicts.findings.push(finding);
             return Judgement::fails("the zero code has no distance");
         }
@@ -94,8 +107,12 @@ impl Court<'_> {
         let shown = interval(&distance);
         let verdict = interval_verdict(*operator, clamped(wanted), distance.lower, distance.upper);
         let judgement = match verdict {
-            Verdict::Holds => return Judgement::holds(format!("d = {shown}")).witness(distance.witness),
-            Verdict::Fails => Judgement::fails(format!("d = {shown}")).witness(distance.witness.clone()),
+            Verdict::Holds => {
+                return Judgement::holds(format!("d = {shown}")).witness(distance.witness);
+            }
+            Verdict::Fails => {
+                Judgement::fails(format!("d = {shown}")).witness(distance.witness.clone())
+            }
             Verdict::Undecided => Judgement::undecided(format!("d lies in {shown}")),
         };
         let message = match verdict {
@@ -103,7 +120,11 @@ impl Court<'_> {
                 "{} is claimed to have d {}, but {}",
                 compiled.title(),
                 relation(expected),
-                if distance.exact().is_some() { format!("d = {shown}") } else { format!("d lies in {shown}") }
+                if distance.exact().is_some() {
+                    format!("d = {shown}")
+                } else {
+                    format!("d lies in {shown}")
+                }
             ),
             _ => format!(
                 "{} is claimed to have d {}; d is only known to lie in {shown}",
@@ -111,14 +132,21 @@ impl Court<'_> {
                 relation(expected)
             ),
         };
-        let mut finding = Finding::new(claim_code(verdict, catalogue::CLAIM_DISTANCE), expected.span, message);
-        let too_low = wanted.to_usize().is_some_and(|wanted| distance.upper < wanted);
+        let mut finding = Finding::new(
+            claim_code(verdict, catalogue::CLAIM_DISTANCE),
+            expected.span,
+            message,
+        );
+        let too_low = wanted
+            .to_usize()
+            .is_some_and(|wanted| distance.upper < wanted);
         if verdict == Verdict::Fails {
             finding = finding.help(format!("write {shown} here if that is what is meant"));
             match distance.witness.as_ref().filter(|_| too_low) {
                 Some(word) => {
                     let (positions, values) = support(word);
-                    let named = position_names(compiled.position_names.as_deref(), &positions).join(", ");
+                    let named =
+                        position_names(compiled.position_names.as_deref(), &positions).join(", ");
                     let mut label = format!("a word of weight {}: {named}", positions.len());
                     if values.iter().any(|&value| value != 1) {
                         label = format!("{label}, with values {values:?}");
@@ -131,13 +159,20 @@ impl Court<'_> {
                 }
             }
             if too_low {
-                finding.related.extend(self.blame(&compiled.code, wanted.to_usize().unwrap_or(0)));
+                finding
+                    .related
+                    .extend(self.blame(&compiled.code, wanted.to_usize().unwrap_or(0)));
             }
         } else {
-            let grounds: Vec<&str> = distance.grounds.iter().map(|bound| bound.says.as_str()).collect();
-            finding = finding
-                .label(format!("d lies in {shown}"))
-                .help(format!("known so far: {}; a larger --budget may decide", grounds.join("; ")));
+            let grounds: Vec<&str> = distance
+                .grounds
+                .iter()
+                .map(|bound| bound.says.as_str())
+                .collect();
+            finding = finding.label(format!("d lies in {shown}")).help(format!(
+                "known so far: {}; a larger --budget may decide",
+                grounds.join("; ")
+            ));
         }
         verdicts.findings.push(finding);
         judgement
@@ -151,8 +186,12 @@ impl Court<'_> {
         verdicts: &mut Verdicts,
     ) -> Judgement {
         let Some(weights) = self.session.weights_by(&compiled.code, Effort::Full) else {
-            let message = format!("the weights of {} could not be derived within the budget", compiled.title());
-            let finding = Finding::new(catalogue::CLAIM_UNDECIDED, span, message).help("give a larger --budget");
+            let message = format!(
+                "the weights of {} could not be derived within the budget",
+                compiled.title()
+            );
+            let finding = Finding::new(catalogue::CLAIM_UNDECIDED, span, message)
+                .help("give a larger --budget");
             verdicts.findings.push(finding);
             return Judgement::undecided("the weights are not known");
         };
@@ -161,7 +200,9 @@ impl Court<'_> {
             .keys()
             .chain(weights.counts.keys())
             .copied()
-            .filter(|weight| claimed.get(weight).unwrap_or(&zero) != weights.counts.get(weight).unwrap_or(&zero))
+            .filter(|weight| {
+                claimed.get(weight).unwrap_or(&zero) != weights.counts.get(weight).unwrap_or(&zero)
+            })
             .min();
         let Some(weight) = differing else {
             return Judgement::holds(format!("weights agree: {}", weights.says));
@@ -172,8 +213,17 @@ impl Court<'_> {
             "{} is claimed to have {stated} words of weight {weight}, but has {actual}",
             compiled.title()
         );
-        let shown: Vec<String> = weights.counts.iter().take(12).map(|(weight, count)| format!("{weight}: {count}")).collect();
-        let more = if weights.counts.len() > 12 { ", …" } else { "" };
+        let shown: Vec<String> = weights
+            .counts
+            .iter()
+            .take(12)
+            .map(|(weight, count)| format!("{weight}: {count}"))
+            .collect();
+        let more = if weights.counts.len() > 12 {
+            ", …"
+        } else {
+            ""
+        };
         let finding = Finding::new(catalogue::CLAIM_WEIGHTS, span, message)
             .label(weights.says.clone())
             .help(format!("the weights are {{{}{more}}}", shown.join(", ")));
@@ -191,7 +241,11 @@ fn relation(expected: &Expected) -> String {
 
 /// A number as wide as any distance; what lies beyond stays beyond.
 fn clamped(number: &num_bigint::BigInt) -> i64 {
-    let beyond = if number.sign() == num_bigint::Sign::Minus { i64::MIN } else { i64::MAX };
+    let beyond = if number.sign() == num_bigint::Sign::Minus {
+        i64::MIN
+    } else {
+        i64::MAX
+    };
     number.to_i64().unwrap_or(beyond)
 }
 
@@ -199,8 +253,14 @@ fn clamped(number: &num_bigint::BigInt) -> i64 {
 fn interval_verdict(operator: BinaryOperator, wanted: i64, lower: usize, upper: usize) -> Verdict {
     let (lower, upper) = (lower as i64, upper as i64);
     let (all, none) = match operator {
-        BinaryOperator::Equal => (lower == wanted && upper == wanted, wanted < lower || wanted > upper),
-        BinaryOperator::Unequal => (wanted < lower || wanted > upper, lower == wanted && upper == wanted),
+        BinaryOperator::Equal => (
+            lower == wanted && upper == wanted,
+            wanted < lower || wanted > upper,
+        ),
+        BinaryOperator::Unequal => (
+            wanted < lower || wanted > upper,
+            lower == wanted && upper == wanted,
+        ),
         BinaryOperator::Less => (upper < wanted, lower >= wanted),
         BinaryOperator::AtMost => (upper <= wanted, lower > wanted),
         BinaryOperator::Greater => (lower > wanted, upper <= wanted),
@@ -226,15 +286,26 @@ fn text(claimed: &Claimed) -> String {
 
 /// All judgements of a claim as one: refuted if one is, else undecided if one is.
 fn combined(judgements: Vec<Judgement>) -> Judgement {
-    let verdict = if judgements.iter().any(|judgement| judgement.verdict == Verdict::Fails) {
+    let verdict = if judgements
+        .iter()
+        .any(|judgement| judgement.verdict == Verdict::Fails)
+    {
         Verdict::Fails
-    } else if judgements.iter().any(|judgement| judgement.verdict == Verdict::Undecided) {
+    } else if judgements
+        .iter()
+        .any(|judgement| judgement.verdict == Verdict::Undecided)
+    {
         Verdict::Undecided
     } else {
         Verdict::Holds
     };
-    let says: Vec<&str> = judgements.iter().map(|judgement| judgement.says.as_str()).collect();
-    let witness = judgements.iter().find_map(|judgement| judgement.witness.clone());
+    let says: Vec<&str> = judgements
+        .iter()
+        .map(|judgement| judgement.says.as_str())
+        .collect();
+    let witness = judgements
+        .iter()
+        .find_map(|judgement| judgement.witness.clone());
     Judgement {
         verdict,
         says: says.join(", "),

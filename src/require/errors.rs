@@ -11,9 +11,12 @@ pub const PHRASES: &[Phrase] = &[
         says: "Any N errors are corrected: 2N + 1 <= d.",
         decide: |asked| {
             let errors = asked.number(0)?;
-            Ok(by_distance(asked, 2 * errors + 1, &format!("2*{errors} + 1"), |asked, word| {
-                confusion(asked, word, errors)
-            }))
+            Ok(by_distance(
+                asked,
+                2 * errors + 1,
+                &format!("2*{errors} + 1"),
+                |asked, word| confusion(asked, word, errors),
+            ))
         },
     },
     Phrase {
@@ -21,9 +24,17 @@ pub const PHRASES: &[Phrase] = &[
         says: "Any N errors are detected: N + 1 <= d.",
         decide: |asked| {
             let errors = asked.number(0)?;
-            Ok(by_distance(asked, errors + 1, &format!("{errors} + 1"), |asked, word| {
-                format!("errors at {} turn a word into another and go unseen", asked.word_named(word))
-            }))
+            Ok(by_distance(
+                asked,
+                errors + 1,
+                &format!("{errors} + 1"),
+                |asked, word| {
+                    format!(
+                        "errors at {} turn a word into another and go unseen",
+                        asked.word_named(word)
+                    )
+                },
+            ))
         },
     },
     Phrase {
@@ -36,9 +47,17 @@ pub const PHRASES: &[Phrase] = &[
         says: "Any N symbols lost at known places are recovered: N + 1 <= d.",
         decide: |asked| {
             let losses = asked.number(0)?;
-            Ok(by_distance(asked, losses + 1, &format!("{losses} + 1"), |asked, word| {
-                format!("what is lost at {} cannot be recovered: a word lives there", asked.word_named(word))
-            }))
+            Ok(by_distance(
+                asked,
+                losses + 1,
+                &format!("{losses} + 1"),
+                |asked, word| {
+                    format!(
+                        "what is lost at {} cannot be recovered: a word lives there",
+                        asked.word_named(word)
+                    )
+                },
+            ))
         },
     },
     Phrase {
@@ -47,17 +66,22 @@ pub const PHRASES: &[Phrase] = &[
         decide: |asked| {
             let (errors, losses) = (asked.number(0)?, asked.number(1)?);
             let needed = 2 * errors + losses + 1;
-            Ok(by_distance(asked, needed, &format!("2*{errors} + {losses} + 1"), |asked, word| {
-                let (positions, _) = support(word);
-                let (lost, rest) = positions.split_at(losses.min(positions.len()));
-                let (one, other) = rest.split_at(errors.min(rest.len()));
-                format!(
-                    "with losses at {}, errors at {} look like errors at {}",
-                    asked.named(lost),
-                    named_or_none(asked, one),
-                    named_or_none(asked, other)
-                )
-            }))
+            Ok(by_distance(
+                asked,
+                needed,
+                &format!("2*{errors} + {losses} + 1"),
+                |asked, word| {
+                    let (positions, _) = support(word);
+                    let (lost, rest) = positions.split_at(losses.min(positions.len()));
+                    let (one, other) = rest.split_at(errors.min(rest.len()));
+                    format!(
+                        "with losses at {}, errors at {} look like errors at {}",
+                        asked.named(lost),
+                        named_or_none(asked, one),
+                        named_or_none(asked, other)
+                    )
+                },
+            ))
         },
     },
 ];
@@ -68,13 +92,18 @@ fn while_detecting(asked: &Asked) -> Result<Ruling, Stop> {
         let mut ruling = Ruling::new(Judgement::fails(format!(
             "what is corrected is detected too, so the second number is at least the first: {detected} < {corrected}"
         )));
-        ruling.help = Some(format!("write `corrects {corrected} while detecting {corrected}`, or `corrects {corrected}`"));
+        ruling.help = Some(format!(
+            "write `corrects {corrected} while detecting {corrected}`, or `corrects {corrected}`"
+        ));
         return Ok(ruling);
     }
     let needed = corrected + detected + 1;
-    let mut ruling = by_distance(asked, needed, &format!("{corrected} + {detected} + 1"), |asked, word| {
-        confusion(asked, word, detected)
-    });
+    let mut ruling = by_distance(
+        asked,
+        needed,
+        &format!("{corrected} + {detected} + 1"),
+        |asked, word| confusion(asked, word, detected),
+    );
     let distance = asked.court.session.distance_by(asked.code(), Effort::Full);
     if let Some(d) = distance.exact().filter(|&d| d < needed) {
         ruling.help = Some(together(d));
@@ -100,13 +129,24 @@ fn confusion(asked: &Asked, word: &[u32], errors: usize) -> String {
     let (positions, _) = support(word);
     let (one, other) = positions.split_at(errors.min(positions.len()));
     if other.is_empty() {
-        return format!("errors at {} turn a word into another and go unseen", asked.named(one));
+        return format!(
+            "errors at {} turn a word into another and go unseen",
+            asked.named(one)
+        );
     }
-    format!("errors at {} look like errors at {}", asked.named(one), asked.named(other))
+    format!(
+        "errors at {} look like errors at {}",
+        asked.named(one),
+        asked.named(other)
+    )
 }
 
 fn named_or_none(asked: &Asked, positions: &[usize]) -> String {
-    if positions.is_empty() { "no place".to_string() } else { asked.named(positions) }
+    if positions.is_empty() {
+        "no place".to_string()
+    } else {
+        asked.named(positions)
+    }
 }
 
 /// Holds when d reaches what is needed; fails, with a story about a light word, when it does not.
@@ -118,16 +158,24 @@ fn by_distance(
 ) -> Ruling {
     let code = asked.code();
     if code.dimension() == 0 {
-        return Ruling::new(Judgement::holds("the code has only one word, so no error leads to another"));
+        return Ruling::new(Judgement::holds(
+            "the code has only one word, so no error leads to another",
+        ));
     }
     let distance = asked.court.session.distance_by(code, Effort::Full);
     let shown = interval(&distance);
     if distance.lower >= needed {
-        let known = if distance.exact().is_some() { format!("d = {shown}") } else { format!("d >= {}", distance.lower) };
+        let known = if distance.exact().is_some() {
+            format!("d = {shown}")
+        } else {
+            format!("d >= {}", distance.lower)
+        };
         return Ruling::new(Judgement::holds(format!("{formula} = {needed} <= {known}")));
     }
     if distance.upper >= needed {
-        return Ruling::new(Judgement::undecided(format!("{formula} = {needed}, and d is only known to lie in {shown}")));
+        return Ruling::new(Judgement::undecided(format!(
+            "{formula} = {needed}, and d is only known to lie in {shown}"
+        )));
     }
     let mut says = format!("d = {shown}, but {formula} = {needed} is needed");
     if let Some(word) = &distance.witness {

@@ -13,7 +13,9 @@ mod structure;
 pub use phrases::{Phrase, phrases};
 
 use crate::code::{Code, Distance};
-use crate::derive::{Effort, Judgement, MEASURES, Session, SessionMeasures, Verdict, properties, support};
+use crate::derive::{
+    Effort, Judgement, MEASURES, Session, SessionMeasures, Verdict, properties, support,
+};
 use crate::evaluate::{CompiledCode, Evaluator, Stop, position_names};
 use crate::finding::{Code as FindingCode, Finding, Related, catalogue, near_names};
 use crate::source::Span;
@@ -79,7 +81,9 @@ impl Court<'_> {
         let mut verdicts = Verdicts::default();
         for clause in &self.evaluator.declaration_of(compiled).clauses {
             match &clause.kind {
-                ClauseKind::Claim(claim) => self.judge_claim(compiled, claim, clause.span, &mut verdicts),
+                ClauseKind::Claim(claim) => {
+                    self.judge_claim(compiled, claim, clause.span, &mut verdicts)
+                }
                 ClauseKind::Requirement(requirement) => {
                     self.judge_requirement(compiled, requirement, &mut verdicts);
                 }
@@ -89,7 +93,12 @@ impl Court<'_> {
         verdicts
     }
 
-    fn judge_requirement(&self, compiled: &CompiledCode, requirement: &Requirement, verdicts: &mut Verdicts) {
+    fn judge_requirement(
+        &self,
+        compiled: &CompiledCode,
+        requirement: &Requirement,
+        verdicts: &mut Verdicts,
+    ) {
         let decided = match &requirement.condition {
             Condition::Phrase(parts) => self.phrase(compiled, parts, requirement),
             Condition::Expression(expression) => self.expression(compiled, expression),
@@ -101,9 +110,9 @@ impl Court<'_> {
                 return;
             }
             Err(Stop::Reported) => return,
-            Err(Stop::Unsettled { name, lower, upper }) => Ruling::new(Judgement::undecided(format!(
-                "{name} is only known to lie in {lower}..{upper}"
-            ))),
+            Err(Stop::Unsettled { name, lower, upper }) => Ruling::new(Judgement::undecided(
+                format!("{name} is only known to lie in {lower}..{upper}"),
+            )),
         };
         if let Some(finding) = self.finding(compiled, requirement, &ruling) {
             verdicts.findings.push(finding);
@@ -127,13 +136,19 @@ impl Court<'_> {
     ) -> Result<Ruling, Stop> {
         let pattern = phrases::pattern_of(parts);
         let Some(phrase) = phrases().find(|phrase| phrase.pattern == pattern) else {
-            return Err(Stop::Finding(Box::new(unknown_phrase(&pattern, requirement.span))));
+            return Err(Stop::Finding(Box::new(unknown_phrase(
+                &pattern,
+                requirement.span,
+            ))));
         };
         let mut operands = Vec::new();
         for part in parts {
             if let PhrasePart::Operand(expression) = part {
                 let scope = compiled.scope.inside(&compiled.code);
-                operands.push((self.evaluator.evaluate(expression, &scope)?, expression.span));
+                operands.push((
+                    self.evaluator.evaluate(expression, &scope)?,
+                    expression.span,
+                ));
             }
         }
         (phrase.decide)(&Asked {
@@ -154,7 +169,11 @@ impl Court<'_> {
                 let plain = self.measures.last.borrow_mut().take();
                 let judgement = match plain {
                     Some(judgement) => Judgement {
-                        verdict: if holds { Verdict::Holds } else { Verdict::Fails },
+                        verdict: if holds {
+                            Verdict::Holds
+                        } else {
+                            Verdict::Fails
+                        },
                         ..judgement
                     },
                     None => Judgement::of(holds, says(true), says(false)),
@@ -164,14 +183,24 @@ impl Court<'_> {
             Err(Stop::Unsettled { name, lower, upper }) => {
                 let mut seen = [false; 2];
                 for value in lower..=upper {
-                    let holds = self.assumed(compiled, expression, vec![(name.clone(), Value::integer(value))])?;
+                    let holds = self.assumed(
+                        compiled,
+                        expression,
+                        vec![(name.clone(), Value::integer(value))],
+                    )?;
                     seen[usize::from(holds)] = true;
                 }
                 let interval = format!("{name} lies in {lower}..{upper}");
                 Ok(Ruling::new(match seen {
-                    [false, true] => Judgement::holds(format!("{interval}, and it holds for each of these")),
-                    [true, false] => Judgement::fails(format!("{interval}, and it fails for each of these")),
-                    _ => Judgement::undecided(format!("{interval}, and only some of these satisfy it")),
+                    [false, true] => {
+                        Judgement::holds(format!("{interval}, and it holds for each of these"))
+                    }
+                    [true, false] => {
+                        Judgement::fails(format!("{interval}, and it fails for each of these"))
+                    }
+                    _ => Judgement::undecided(format!(
+                        "{interval}, and only some of these satisfy it"
+                    )),
                 }))
             }
             Err(Stop::Finding(finding)) if finding.code == catalogue::CLAIM_UNDECIDED => {
@@ -212,19 +241,39 @@ impl Court<'_> {
                 return sides.join(" and ");
             }
         }
-        if holds { "it evaluates to true".into() } else { "it evaluates to false".into() }
+        if holds {
+            "it evaluates to true".into()
+        } else {
+            "it evaluates to false".into()
+        }
     }
 
-    fn finding(&self, compiled: &CompiledCode, requirement: &Requirement, ruling: &Ruling) -> Option<Finding> {
+    fn finding(
+        &self,
+        compiled: &CompiledCode,
+        requirement: &Requirement,
+        ruling: &Ruling,
+    ) -> Option<Finding> {
         let (code, verb) = match (ruling.judgement.verdict, requirement.strength) {
             (Verdict::Holds, _) => return None,
-            (Verdict::Fails, Strength::Require) => (catalogue::REQUIREMENT_FAILS, "is required, but fails"),
-            (Verdict::Fails, Strength::Prefer) => (catalogue::PREFERENCE_FAILS, "is preferred, but fails"),
-            (Verdict::Undecided, Strength::Require) => (catalogue::REQUIREMENT_UNDECIDED, "is required, but undecided"),
-            (Verdict::Undecided, Strength::Prefer) => (catalogue::PREFERENCE_UNDECIDED, "is preferred, but undecided"),
+            (Verdict::Fails, Strength::Require) => {
+                (catalogue::REQUIREMENT_FAILS, "is required, but fails")
+            }
+            (Verdict::Fails, Strength::Prefer) => {
+                (catalogue::PREFERENCE_FAILS, "is preferred, but fails")
+            }
+            (Verdict::Undecided, Strength::Require) => (
+                catalogue::REQUIREMENT_UNDECIDED,
+                "is required, but undecided",
+            ),
+            (Verdict::Undecided, Strength::Prefer) => (
+                catalogue::PREFERENCE_UNDECIDED,
+                "is preferred, but undecided",
+            ),
         };
         let message = format!("{}: `{}` {verb}", compiled.title(), requirement.text);
-        let mut finding = Finding::new(code, requirement.span, message).label(ruling.judgement.says.clone());
+        let mut finding =
+            Finding::new(code, requirement.span, message).label(ruling.judgement.says.clone());
         finding.help = ruling.help.clone();
         if let Some(needed) = ruling.needed {
             finding.related.extend(self.blame(&compiled.code, needed));
@@ -242,13 +291,16 @@ impl Court<'_> {
             .iter()
             .enumerate()
             .map(|(at, step)| {
-                let effort = if at + 1 == trail.len() { Effort::Full } else { Effort::Small };
+                let effort = if at + 1 == trail.len() {
+                    Effort::Full
+                } else {
+                    Effort::Small
+                };
                 self.session.distance_by(step, effort)
             })
             .collect();
-        let at = (0..trail.len()).find(|&at| {
-            distances[at].upper < needed && distances[at].lower > 0
-        })?;
+        let at =
+            (0..trail.len()).find(|&at| distances[at].upper < needed && distances[at].lower > 0)?;
         let span = trail[at].origin().span;
         let now = interval(&distances[at]);
         let message = if at == 0 {
@@ -366,12 +418,19 @@ fn unknown_phrase(pattern: &str, span: Span) -> Finding {
     let first = pattern.split(' ').next().unwrap_or("");
     let mut near = near_names(pattern, known.iter().copied());
     if near.is_empty() {
-        near = known.iter().copied().filter(|known| known.split(' ').next() == Some(first)).collect();
+        near = known
+            .iter()
+            .copied()
+            .filter(|known| known.split(' ').next() == Some(first))
+            .collect();
     }
     if near.is_empty() {
         return finding.help("the requirements are listed by `cosetta explain requirements`");
     }
-    let near: Vec<String> = near.iter().map(|near| format!("`{}`", near.replace('_', "N"))).collect();
+    let near: Vec<String> = near
+        .iter()
+        .map(|near| format!("`{}`", near.replace('_', "N")))
+        .collect();
     finding.help(format!("did you mean {}?", near.join(", or ")))
 }
 

@@ -53,7 +53,11 @@ fn comparable(asked: &Asked, other: &Code) -> Result<(), Stop> {
         other.dimension(),
         other.field()
     );
-    Err(Stop::Finding(Box::new(Finding::new(catalogue::SHAPE, asked.operands[0].1, message))))
+    Err(Stop::Finding(Box::new(Finding::new(
+        catalogue::SHAPE,
+        asked.operands[0].1,
+        message,
+    ))))
 }
 
 /// Whether all words of one code lie in another.
@@ -64,7 +68,9 @@ fn inside(small: &Code, large: &Code, whose: &str) -> Judgement {
         .find(|word| !large.contains(word));
     match stranger {
         None => Judgement::holds(format!("a basis of {whose} passes all checks")),
-        Some(word) => Judgement::fails(format!("a word of {whose} fails a check")).witness(Some(word)),
+        Some(word) => {
+            Judgement::fails(format!("a word of {whose} fails a check")).witness(Some(word))
+        }
     }
 }
 
@@ -88,7 +94,11 @@ fn same_matrix(asked: &Asked) -> Result<Ruling, Stop> {
         (Value::Matrix(matrix), _) => matrix,
         (other, span) => {
             let message = format!("a matrix is needed here, not {}", other.kind());
-            return Err(Stop::Finding(Box::new(Finding::new(catalogue::WRONG_TYPE, *span, message))));
+            return Err(Stop::Finding(Box::new(Finding::new(
+                catalogue::WRONG_TYPE,
+                *span,
+                message,
+            ))));
         }
     };
     let own = structure::check_matrix(asked.code());

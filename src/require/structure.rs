@@ -34,7 +34,11 @@ fn column_weight_odd(asked: &Asked) -> Result<Ruling, Stop> {
     let even = weights.iter().position(|weight| weight % 2 == 0);
     Ok(Ruling::new(match even {
         None => Judgement::holds(format!("all {} columns have odd weight", weights.len())),
-        Some(at) => Judgement::fails(format!("the column of {} has weight {}", asked.named(&[at]), weights[at])),
+        Some(at) => Judgement::fails(format!(
+            "the column of {} has weight {}",
+            asked.named(&[at]),
+            weights[at]
+        )),
     }))
 }
 
@@ -42,11 +46,17 @@ fn full_rank(asked: &Asked) -> Result<Ruling, Stop> {
     let code = asked.code();
     let rows = match code.space() {
         Space::Check(matrix) => matrix.rows(),
-        _ => return Ok(Ruling::new(Judgement::holds("the check matrix is derived, with as many rows as its rank"))),
+        _ => {
+            return Ok(Ruling::new(Judgement::holds(
+                "the check matrix is derived, with as many rows as its rank",
+            )));
+        }
     };
     let rank = code.redundancy();
     if rows == rank {
-        return Ok(Ruling::new(Judgement::holds(format!("all {rows} rows are independent"))));
+        return Ok(Ruling::new(Judgement::holds(format!(
+            "all {rows} rows are independent"
+        ))));
     }
     let dependent = structure::dependent_rows(structure::check_matrix(code));
     let mut says = format!("{rows} rows have rank {rank}");
@@ -58,18 +68,27 @@ fn full_rank(asked: &Asked) -> Result<Ruling, Stop> {
 }
 
 fn no_four_cycles(asked: &Asked) -> Result<Ruling, Stop> {
-    Ok(Ruling::new(match structure::girth(structure::check_matrix(asked.code())) {
-        Ok(Some(4)) => Judgement::fails("the girth is 4"),
-        Ok(Some(girth)) => Judgement::holds(format!("the girth is {girth}")),
-        Ok(None) => Judgement::holds("there is no cycle"),
-        Err(()) => Judgement::undecided("the matrix is too large to look for cycles"),
-    }))
+    Ok(Ruling::new(
+        match structure::girth(structure::check_matrix(asked.code())) {
+            Ok(Some(4)) => Judgement::fails("the girth is 4"),
+            Ok(Some(girth)) => Judgement::holds(format!("the girth is {girth}")),
+            Ok(None) => Judgement::holds("there is no cycle"),
+            Err(()) => Judgement::undecided("the matrix is too large to look for cycles"),
+        },
+    ))
 }
 
 fn balanced(asked: &Asked) -> Result<Ruling, Stop> {
     let allowed = asked.number(0)?;
     let weights = structure::row_weights(structure::check_matrix(asked.code()));
-    let (least, most) = (weights.iter().min().unwrap_or(&0), weights.iter().max().unwrap_or(&0));
+    let (least, most) = (
+        weights.iter().min().unwrap_or(&0),
+        weights.iter().max().unwrap_or(&0),
+    );
     let says = format!("row weights run from {least} to {most}");
-    Ok(Ruling::new(Judgement::of(most - least <= allowed, says.clone(), says)))
+    Ok(Ruling::new(Judgement::of(
+        most - least <= allowed,
+        says.clone(),
+        says,
+    )))
 }

@@ -69,10 +69,16 @@ impl Rules for Expurgated {
             return Vec::new();
         }
         if self.even && before.lower % 2 == 1 {
-            let says = format!("words of even weight only, d before was at least {}", before.lower);
+            let says = format!(
+                "words of even weight only, d before was at least {}",
+                before.lower
+            );
             return vec![lower(before.lower + 1, "even-subcode", says)];
         }
-        before.carried_lower("a subcode keeps it").into_iter().collect()
+        before
+            .carried_lower("a subcode keeps it")
+            .into_iter()
+            .collect()
     }
 
     fn weights(&self, code: &Code, known: &dyn Knowledge) -> Option<Weights> {

@@ -125,6 +125,9 @@ impl Rules for Image {
         if before.lower == 0 {
             return Vec::new();
         }
-        before.carried_lower("a non-zero symbol has a non-zero coordinate").into_iter().collect()
+        before
+            .carried_lower("a non-zero symbol has a non-zero coordinate")
+            .into_iter()
+            .collect()
     }
 }

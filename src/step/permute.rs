@@ -60,7 +60,11 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
         );
         return Err(call.wrong("order", catalogue::BAD_POSITIONS, message));
     }
-    Ok(reordered(code, order, "another order of positions keeps it"))
+    Ok(reordered(
+        code,
+        order,
+        "another order of positions keeps it",
+    ))
 }
 
 /// The code with new position i holding old position `order[i]`, a permutation.

@@ -47,6 +47,9 @@ impl Rules for Shortened {
         if before.lower == 0 || code.dimension() == 0 {
             return Vec::new();
         }
-        before.carried_lower("shortening keeps it").into_iter().collect()
+        before
+            .carried_lower("shortening keeps it")
+            .into_iter()
+            .collect()
     }
 }

@@ -67,6 +67,9 @@ impl Rules for Subfield {
         if before.lower == 0 || code.dimension() == 0 {
             return Vec::new();
         }
-        before.carried_lower("a subfield subcode keeps it").into_iter().collect()
+        before
+            .carried_lower("a subfield subcode keeps it")
+            .into_iter()
+            .collect()
     }
 }
