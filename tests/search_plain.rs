@@ -230,3 +230,42 @@ fn covering_radii() {
         }
     });
 }
+
+#[test]
+fn settling_gives_the_distance_from_either_matrix() {
+    each_code(40, |generator, check, counts| {
+        let n = generator.columns();
+        for (one, two) in [
+            (Some(generator), None),
+            (None, Some(check)),
+            (Some(generator), Some(check)),
+        ] {
+            let settled = settle(one, two, 0, n + 1, 1, &Budget::seconds(1.0), &Quiet);
+            match distance(counts) {
+                None => assert_eq!((settled.lower, settled.upper), (0, 0)),
+                Some(d) => {
+                    assert_eq!(
+                        (settled.lower, settled.upper),
+                        (d, d),
+                        "{generator:?} {settled:?}"
+                    );
+                    let word = settled.word.expect("a word to show");
+                    assert_eq!(weight(&word), d);
+                    assert!(is_word(check, &word));
+                }
+            }
+        }
+        for units in [0, 100, 3000] {
+            let settled = settle(
+                Some(generator),
+                None,
+                1,
+                n,
+                1,
+                &Budget::units(units),
+                &Quiet,
+            );
+            assert!(distance(counts).is_none_or(|d| settled.lower <= d && d <= settled.upper));
+        }
+    });
+}

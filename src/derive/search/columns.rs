@@ -55,6 +55,16 @@ enum Look {
 /// only begun when the budget covers all of it; a set that is found early costs less. When all
 /// columns are independent together, `independent` is n.
 pub fn dependent_columns(check: &Matrix, most: usize, budget: &Budget) -> Dependent {
+    dependent_columns_from(check, 1, most, budget)
+}
+
+/// The same, every set of fewer than `least` columns being known to be independent.
+pub(super) fn dependent_columns_from(
+    check: &Matrix,
+    least: usize,
+    most: usize,
+    budget: &Budget,
+) -> Dependent {
     let columns = Columns::new(check);
     let n = columns.columns.len();
     if columns.rank == n {
@@ -63,7 +73,7 @@ pub fn dependent_columns(check: &Matrix, most: usize, budget: &Budget) -> Depend
             word: None,
         };
     }
-    for weight in 1..=most.min(columns.rank + 1) {
+    for weight in least.max(1)..=most.min(columns.rank + 1) {
         match columns.look(weight, budget) {
             Look::None => {}
             Look::Found(word) => {

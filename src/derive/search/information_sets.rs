@@ -12,6 +12,8 @@ use super::combinations::{Combinations, Found, combinations};
 use super::{Budget, LightWord, Progress};
 use crate::algebra::Matrix;
 
+/// More sets than this are not made; longer codes of so small a dimension have few words.
+const MOST_SETS: usize = 256;
 /// How many combinations' first rows are handed out at a time.
 const TASKS_A_TICK: usize = 512;
 
@@ -22,10 +24,9 @@ pub struct Raised {
     pub lower: usize,
     /// The lightest word met, when it is lighter than what was known before.
     pub upper: Option<LightWord>,
-    /// Combinations of up to this many rows were examined, in every set that was used.
-    pub rows: usize,
-    /// How many information sets were used.
-    pub sets: usize,
+    /// For each information set that was used, the most rows of which all combinations were
+    /// examined.
+    pub rows: Vec<usize>,
 }
 
 /// A systematic generator, and how many of its information positions are in no earlier set.
@@ -49,8 +50,7 @@ pub fn raise_lower_bound(
     let mut raised = Raised {
         lower: known_lower,
         upper: None,
-        rows: 0,
-        sets: 0,
+        rows: Vec::new(),
     };
     let elimination = product(&[
         generator.rows() as u64,
@@ -80,7 +80,7 @@ pub fn raise_lower_bound(
         divisor: divisor.max(1),
         generator,
     };
-    raised.sets = plan.sets;
+    raised.rows = vec![0; plan.sets];
     search.run(&mut raised, budget, progress);
     raised
 }
@@ -114,13 +114,13 @@ fn information_sets(generator: &Matrix, budget: &Budget) -> Vec<Set> {
     let n = generator.columns();
     let mut used = vec![false; n];
     let mut sets: Vec<Set> = Vec::new();
-    loop {
+    while sets.len() < MOST_SETS {
         let mut order: Vec<usize> = (0..n).filter(|&at| !used[at]).collect();
         order.extend((0..n).filter(|&at| used[at]));
         let code = Systematic::in_order(generator, &order);
         let fresh = code.pivots.iter().filter(|&&pivot| !used[pivot]).count();
         if fresh == 0 {
-            return sets;
+            break;
         }
         for &pivot in &code.pivots {
             used[pivot] = true;
@@ -128,9 +128,10 @@ fn information_sets(generator: &Matrix, budget: &Budget) -> Vec<Set> {
         let cost = product(&[fresh as u64, fresh as u64, n as u64]);
         sets.push(Set { code, fresh });
         if !budget.spend(cost / 16) {
-            return sets;
+            break;
         }
     }
+    sets
 }
 
 /// The numbers that the bound and the cost depend on.
@@ -219,7 +220,6 @@ struct Search<'a> {
 
 impl Search<'_> {
     fn run(&mut self, raised: &mut Raised, budget: &Budget, progress: &dyn Progress) {
-        let mut done = vec![0; self.sets.len()];
         for rows in 1..=self.shape.k {
             for set in 0..self.sets.len() {
                 if !budget.spend(self.shape.cost(rows)) {
@@ -228,10 +228,9 @@ impl Search<'_> {
                 if !self.examine(rows, set, raised, progress) {
                     return;
                 }
-                done[set] = rows;
-                let bound = self.shape.bound(&done, self.divisor).min(self.upper);
+                raised.rows[set] = rows;
+                let bound = self.shape.bound(&raised.rows, self.divisor).min(self.upper);
                 raised.lower = raised.lower.max(bound);
-                raised.rows = rows;
                 if raised.lower >= self.upper {
                     return;
                 }

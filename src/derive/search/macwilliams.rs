@@ -7,6 +7,7 @@ use num_bigint::{BigInt, BigUint};
 use num_traits::{One, Signed, Zero};
 
 use super::Counts;
+use super::arithmetic::product;
 
 /// The weights of the dual of an [n, k] code over GF(q), from the code's own
 /// (F. J. MacWilliams, 1963; the identity is W(u, v) with u = 1 + (q − 1)z, v = 1 − z).
@@ -35,6 +36,13 @@ pub fn macwilliams(counts: &[BigUint], q: u64, n: usize, k: usize) -> Option<Cou
             whole.then(|| (count / &divisor).magnitude().clone())
         })
         .collect()
+}
+
+/// The work units of [`macwilliams`].
+pub(super) fn cost_of_transform(q: u64, n: usize) -> u64 {
+    let n = n as u64;
+    let limbs = n.saturating_mul(u64::from(q.ilog2()) + 1) / 64;
+    product(&[n, n, 20 + limbs])
 }
 
 /// Multiplies entry i by `base`^i.

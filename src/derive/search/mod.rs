@@ -6,6 +6,7 @@
 //! depend on the matrices and the budget only, never on the clock or the number of threads.
 
 mod arithmetic;
+pub mod bounds;
 mod budget;
 mod columns;
 mod combinations;
@@ -15,8 +16,10 @@ mod enumerate;
 mod information_sets;
 mod keys;
 mod light_words;
+mod linear_program;
 mod macwilliams;
 mod transform;
+mod wording;
 
 use num_bigint::BigUint;
 
@@ -29,6 +32,7 @@ pub use distance::{Ground, Settled, Side, settle};
 pub use enumerate::{cost_of_words, minimum_by_words, weight_counts};
 pub use information_sets::{Raised, raise_lower_bound};
 pub use light_words::light_word;
+pub use linear_program::linear_programming;
 pub use macwilliams::{macwilliams, mds_weights};
 
 /// How many words there are of each weight: entry w counts those of weight w, 0 ≤ w ≤ n.
