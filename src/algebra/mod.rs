@@ -11,5 +11,4 @@ pub mod matrix;
 
 pub use field::{Element, Field, FieldError};
 pub use matrix::Matrix;
-mod shim;
 pub use shim::*;
