@@ -6,6 +6,9 @@
 
 pub mod field;
 pub mod matrix;
+pub mod numbers;
 
-pub use field::{Element, Field, FieldError};
+pub use field::embedding::Embedding;
+pub use field::{Element, Field, FieldError, format_polynomial};
 pub use matrix::Matrix;
+pub use numbers::{factor_u64, is_prime, order_modulo, prime_power};
