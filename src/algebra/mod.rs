@@ -7,8 +7,13 @@
 pub mod field;
 pub mod matrix;
 pub mod numbers;
+pub mod polynomial;
 
 pub use field::embedding::Embedding;
 pub use field::{Element, Field, FieldError, format_polynomial};
 pub use matrix::Matrix;
 pub use numbers::{factor_u64, is_prime, order_modulo, prime_power};
+pub use polynomial::Polynomial;
+pub use polynomial::roots::{
+    CyclicRoots, RootConvention, RootError, cyclotomic_coset, generator_from_roots,
+};
