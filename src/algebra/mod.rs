@@ -8,7 +8,14 @@ pub mod field;
 pub mod formats;
 pub mod kernels;
 pub mod matrix;
+pub mod numbers;
+pub mod polynomial;
 
-pub use field::{Element, Field, FieldError};
+pub use field::embedding::Embedding;
+pub use field::{Element, Field, FieldError, format_polynomial};
 pub use matrix::Matrix;
-pub use shim::*;
+pub use numbers::{factor_u64, is_prime, order_modulo, prime_power};
+pub use polynomial::Polynomial;
+pub use polynomial::roots::{
+    CyclicRoots, RootConvention, RootError, cyclotomic_coset, generator_from_roots,
+};

@@ -60,16 +60,16 @@ fn by_roots(call: &Call, field: &Field, length: usize) -> Found<Made> {
     } else {
         None
     };
-    let found = generator_from_roots(field, length, &exponents, stated)
+    let found = generator_from_roots(field, length as u64, &exponents, stated)
         .map_err(|error| refused(call, field, length, &error))?;
     let cyclic = Cyclic::new(field, length, found.generator.coefficients().to_vec())
         .expect("a product of minimal polynomials of n-th roots of unity divides x^n - 1");
     Ok(made(field, length, cyclic)
         .rules(ByRoots {
             length,
-            roots: found.roots,
+            roots: found.exponents,
         })
-        .assuming(format!("roots are powers of b, where {}", found.convention)))
+        .assuming(found.convention.to_string()))
 }
 
 fn made(field: &Field, length: usize, cyclic: Cyclic) -> Made {
@@ -107,18 +107,27 @@ fn refused(
     length: usize,
     error: &RootError,
 ) -> Box<crate::finding::Finding> {
-    let place = match error {
-        RootError::CommonFactor { .. } => "length",
-        _ if call.has("in") => "in",
-        _ => "roots",
+    let (place, message, help) = match error {
+        RootError::EmptyLength => ("length", "a code needs at least one position".to_string(), None),
+        RootError::SharedFactor { factor } => (
+            "length",
+            format!("the length {length} and q = {} share the factor {factor}, so x^{length} - 1 has repeated roots", field.order()),
+            Some("name the code by `generator:` instead".to_string()),
+        ),
+        RootError::NotAnExtension => ("in", format!("the stated root field does not contain {field}"), None),
+        RootError::NoPrimitiveRoot { degree } => (
+            "in",
+            format!("the stated root field has no primitive root of unity of order {length}"),
+            Some(format!("take GF({}^{})", field.characteristic(), u64::from(field.degree()) * degree)),
+        ),
+        RootError::TooLarge { degree } => (
+            "length",
+            format!("the roots lie in GF({}^{degree}), too large to work in at length {length}", field.order()),
+            Some("name the code by `generator:` instead".to_string()),
+        ),
     };
-    let mut finding = call.wrong(place, catalogue::BAD_ROOTS, error.to_string());
-    if matches!(error, RootError::CommonFactor { .. }) {
-        finding.help = Some(format!(
-            "over {field} a length without the factor {} has simple roots; for {length} give `generator:` instead",
-            field.characteristic()
-        ));
-    }
+    let mut finding = call.wrong(place, catalogue::BAD_ROOTS, message);
+    finding.help = help;
     finding
 }
 

@@ -5,6 +5,7 @@ use super::model::{
     StepReport, Weights, Witness,
 };
 use crate::code::{self, Code, Distance};
+use crate::derive::search::bounds;
 use crate::derive::{Effort, Session, properties, structure, support};
 use crate::evaluate::{CompiledCode, Evaluator};
 use crate::project::{Checked, View};
@@ -122,10 +123,21 @@ fn largest_distances(code: &Code, report: &mut CodeReport) {
     if k == 0 {
         return;
     }
-    for (name, bound) in bounds::all(q, n, k) {
-        report.bounds.push(name, bound as u64);
+    let plain: [(&str, fn(u64, usize, usize) -> usize); 4] = [
+        ("singleton", bounds::singleton),
+        ("hamming", bounds::hamming),
+        ("plotkin", bounds::plotkin),
+        ("griesmer", bounds::griesmer),
+    ];
+    for (name, bound) in plain {
+        report.bounds.push(name, bound(q, n, k) as u64);
     }
-    report.gilbert_varshamov = bounds::gilbert_varshamov(q, n, k).map(|d| d as u64);
+    for (name, bound) in [("johnson", bounds::johnson(q, n, k)), ("elias", bounds::elias(q, n, k))] {
+        if let Some(bound) = bound {
+            report.bounds.push(name, bound as u64);
+        }
+    }
+    report.gilbert_varshamov = Some(bounds::gilbert_varshamov(q, n, k) as u64);
 }
 
 fn measures(code: &Code, report: &mut CodeReport) {
@@ -236,14 +248,5 @@ pub fn summary(view: &View, checked: &Checked) -> Summary {
         k: code.dimension(),
         d: interval(&view.session.distance_by(code, Effort::Full)),
         requirements: checked.verdicts.clauses.iter().map(requirement).collect(),
-    }
-}
-
-mod bounds {
-    pub fn all(_q: u64, n: usize, k: usize) -> Vec<(&'static str, usize)> {
-        vec![("singleton", n - k + 1)]
-    }
-    pub fn gilbert_varshamov(_q: u64, _n: usize, _k: usize) -> Option<usize> {
-        None
     }
 }

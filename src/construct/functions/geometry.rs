@@ -38,7 +38,7 @@ pub const FUNCTIONS: &[Function] = &[
 
 fn projective_plane(call: &Call) -> Found<Value> {
     let order = call.size("order", 2, 64)?;
-    let field = prime_power(order as u64)
+    let field = crate::algebra::prime_power(order as u64)
         .and_then(|(p, m)| Field::conway(p, m).ok())
         .ok_or_else(|| {
             call.wrong(
@@ -66,17 +66,6 @@ fn projective_plane(call: &Call) -> Found<Value> {
         points: points.len(),
         blocks,
     })))
-}
-
-fn prime_power(order: u64) -> Option<(u64, u32)> {
-    let p = (2..=order).find(|divisor| order.is_multiple_of(*divisor))?;
-    let mut rest = order;
-    let mut degree = 0;
-    while rest.is_multiple_of(p) {
-        rest /= p;
-        degree += 1;
-    }
-    (rest == 1).then_some((p, degree))
 }
 
 /// One vector of length 3 a line through zero, first non-zero entry 1, in numeric order.
