@@ -5,6 +5,7 @@
 //! `grammar/cosetta.pest`, builders make the tree, and [`expected`] puts what pest missed in plain
 //! words. One broken declaration, or one broken clause of a code, never hides the others.
 
+mod brackets;
 mod clauses;
 mod expected;
 mod expressions;
@@ -15,6 +16,7 @@ mod look_alikes;
 mod operators;
 mod parse;
 mod reader;
+mod rule_words;
 mod scan;
 mod special;
 pub mod tree;
