@@ -245,6 +245,18 @@ fn declarations_may_share_a_line_and_phrases_keep_their_words() {
 }
 
 #[test]
+fn clause_words_inside_brackets_begin_no_clause() {
+    let text = "code c over bit = f(3,\n  bits: 3,\n  note: \"x\")\n  require recovers 2 groups of\n    bits(data)\n  require (d\n    >= 3)";
+    assert_eq!(findings(text), "");
+    let text = "code c over bit = f(3)\n  require (d >= 3\n  require mds)\n  require d >= (3 + \n  note \"x\" code e over bit = f";
+    let parsed = read(text);
+    assert_eq!(
+        (parsed.findings.len(), parsed.file.declarations.len()),
+        (3, 2)
+    );
+}
+
+#[test]
 fn documentation_belongs_to_what_follows_it_directly() {
     let text = "## About the file.\n\n## One.\n## Two.\n# not part of it\nlet a1 = 1 ## no documentation\nlet a2 = 2\n##Tight.\nlet a3 = 3\n## Lost.\n\nlet a4 = 4";
     let parsed = read(text);

@@ -27,9 +27,9 @@ use crate::source::SourceId;
 use std::num::NonZeroUsize;
 use std::sync::Once;
 
-/// How many rule applications one piece may take: far above any real declaration, and still
-/// well under a second.
-const CALL_LIMIT: NonZeroUsize = NonZeroUsize::new(20_000_000).unwrap();
+/// How many rule applications one piece may take: enough for a matrix of a million entries, and
+/// about a second at most.
+const CALL_LIMIT: NonZeroUsize = NonZeroUsize::new(80_000_000).unwrap();
 
 /// What a file's text gives.
 #[derive(Clone, Debug, Default)]
