@@ -331,3 +331,10 @@ fn long_chains_and_many_declarations_are_walked() {
     assert_eq!(told(text, &[]), "");
     assert!(order(text).ends_with("v5000 c"));
 }
+
+#[test]
+fn a_code_may_be_called_like_the_word_its_steps_take() {
+    let text = "field bit = GF(2)\ncode first over bit = hamming(3) then arrange(data: first)";
+    assert_eq!(told(text, &[]), "");
+    assert_eq!(order(text), "bit first");
+}

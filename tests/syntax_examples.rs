@@ -135,3 +135,9 @@ deliver sram_word to "out"
     assert_eq!(findings(text), "");
     insta::assert_snapshot!(shape(text));
 }
+#[test]
+fn every_form_is_read() {
+    let text = include_str!("specs/syntax_every_form.coset");
+    assert_eq!(findings(text), "");
+    insta::assert_snapshot!(shape(text));
+}

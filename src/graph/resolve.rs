@@ -58,12 +58,8 @@ pub fn resolve(
         let known = |name: &str| resolver.exists(file, name);
         for mention in mentions(&declaration.kind, &known) {
             used.insert((file, mention.text.to_string()));
-            verdicts.push((
-                node,
-                mention.clause,
-                mention.span,
-                resolver.judge(file, &mention),
-            ));
+            let verdict = resolver.judge(node, file, &mention);
+            verdicts.push((node, mention.clause, mention.span, verdict));
         }
     }
     for (node, clause, span, verdict) in verdicts {
@@ -112,7 +108,7 @@ impl Resolver<'_> {
         file.missing.contains(name) || file.broken.iter().any(|broken| broken.text == name)
     }
 
-    fn judge(&self, file: usize, mention: &Mention<'_>) -> Verdict {
+    fn judge(&self, user: NodeIndex, file: usize, mention: &Mention<'_>) -> Verdict {
         let name = mention.text;
         if mention.role == Role::Step {
             let known = self.builtins.steps.contains(&name);
@@ -122,8 +118,14 @@ impl Resolver<'_> {
                 self.unknown_step(file, mention)
             };
         }
+        let word = mention.role == Role::Choice && CHOICES.contains(&name);
         if let Some(node) = self.program.lookup(file, name) {
-            return Verdict::Uses(node);
+            // A code called `first` may still say `data: first`.
+            return if word && node == user {
+                Verdict::Fine
+            } else {
+                Verdict::Uses(node)
+            };
         }
         if self.unreadable(file, name) {
             return Verdict::Broken;

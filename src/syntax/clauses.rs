@@ -3,7 +3,8 @@
 use super::grammar::Rule;
 use super::reader::{Node, Reader};
 use super::tree::*;
-use crate::finding::{Finding, Found, catalogue};
+use super::words::PHRASE_WORDS;
+use crate::finding::{Finding, Found, catalogue, near_names};
 use crate::source::Span;
 
 impl<'a> Reader<'a> {
@@ -162,6 +163,9 @@ impl<'a> Reader<'a> {
                     PhrasePart::Word(word)
                 }
             });
+            if let [.., PhrasePart::Operand(first), PhrasePart::Operand(second)] = &parts[..] {
+                return Err(Box::new(two_operands(first, second)));
+            }
         }
         Ok(parts)
     }
@@ -228,4 +232,34 @@ fn wrong_count(count: usize, place: Span) -> Finding {
     )
     .label(format!("{count} {entries}"))
     .help(help)
+}
+
+/// Two operands of a phrase with no word between them: one is a misspelt word, as a rule.
+fn two_operands(first: &Expression, second: &Expression) -> Finding {
+    let word = |value: &Expression| match &value.kind {
+        ExpressionKind::Name(name) => Some((name.clone(), value.span)),
+        _ => None,
+    };
+    let near = |(name, span): (String, Span)| {
+        let near = near_names(&name, PHRASE_WORDS.iter().copied());
+        near.first()
+            .map(|near| (name, span, format!("did you mean `{near}`?")))
+    };
+    let guess = [second, first].into_iter().filter_map(word).find_map(near);
+    match guess {
+        Some((name, span, help)) => Finding::new(
+            catalogue::UNKNOWN_REQUIREMENT,
+            span,
+            format!("`{name}` is no word of a requirement"),
+        )
+        .label("unknown word")
+        .help(help),
+        None => Finding::new(
+            catalogue::UNKNOWN_REQUIREMENT,
+            second.span,
+            "two values stand side by side",
+        )
+        .label("a word is missing before this")
+        .help("requirements read like `corrects 1 while detecting 2` or `recovers 4 losses`"),
+    }
 }

@@ -5,6 +5,7 @@
 //! `grammar/cosetta.pest`, builders make the tree, and [`expected`] puts what pest missed in plain
 //! words. One broken declaration, or one broken clause of a code, never hides the others.
 
+mod brackets;
 mod clauses;
 mod expected;
 mod expressions;
@@ -15,6 +16,7 @@ mod look_alikes;
 mod operators;
 mod parse;
 mod reader;
+mod rule_words;
 mod scan;
 mod special;
 pub mod tree;
@@ -25,9 +27,9 @@ use crate::source::SourceId;
 use std::num::NonZeroUsize;
 use std::sync::Once;
 
-/// How many rule applications one piece may take: far above any real declaration, and still
-/// well under a second.
-const CALL_LIMIT: NonZeroUsize = NonZeroUsize::new(20_000_000).unwrap();
+/// How many rule applications one piece may take: enough for a matrix of a million entries, and
+/// about a second at most.
+const CALL_LIMIT: NonZeroUsize = NonZeroUsize::new(80_000_000).unwrap();
 
 /// What a file's text gives.
 #[derive(Clone, Debug, Default)]

@@ -119,9 +119,8 @@ impl<'a> Order<'a> {
             if !reduces {
                 break;
             }
-            if let (COMPARISON | RANGE, Waiting::Infix(first, _)) = (level, top)
-                && first.level() == level
-            {
+            let chains = matches!(top, Waiting::Infix(first, _) if first.level() == level);
+            if chains && matches!(level, COMPARISON | RANGE) {
                 return Err(Box::new(self.chained(level, span)));
             }
             self.reduce();

@@ -158,8 +158,13 @@ impl<'a> Scanner<'a> {
             );
         }
         let piece = self.out.pieces.len() - 1;
-        if first && matches!(word, "is" | "require" | "prefer" | "bits" | "note") {
+        // Not as an argument's name (`bits: 3`), nor as an operand (`bits(data)`).
+        let clause = first && matches!(word, "is" | "require" | "prefer" | "bits" | "note");
+        let after = self.after();
+        let inner = after.starts_with(':') || word == "bits" && after.starts_with('(');
+        if clause && !inner {
             self.out.pieces[piece].clauses.push(start);
+            self.open = vec![0];
         }
         let form = matches!(
             word,

@@ -4,8 +4,8 @@ use super::expected::View;
 use super::grammar::Rule;
 use super::look_alikes::{LOOK_ALIKES, MARKS};
 use super::scan::string_end;
-use super::words::is_reserved;
-use crate::finding::{Finding, catalogue};
+use super::words::{PHRASE_VERBS, is_reserved};
+use crate::finding::{Finding, catalogue, near_names};
 use crate::source::Span;
 
 impl View<'_> {
@@ -23,7 +23,11 @@ impl View<'_> {
                 "the control character {:#04x} has no meaning here",
                 u32::from(next)
             );
-            return Some(self.at(at, 1, message).label("not text").help("delete it"));
+            return Some(
+                self.syntax(at, 1, message)
+                    .label("not text")
+                    .help("delete it"),
+            );
         }
         self.foreign_mark(at)
     }
@@ -36,11 +40,13 @@ impl View<'_> {
             .or_else(|| self.bars(at))
             .or_else(|| self.glued_number(at))
             .or_else(|| self.sum_in_row(at, positives))
+            .or_else(|| self.misspelt_verb(at))
             .or_else(|| self.missing_then(at, positives))
             .or_else(|| self.missing_over(at, positives))
     }
 
-    fn at(&self, at: usize, length: usize, message: impl Into<String>) -> Finding {
+    /// A syntax finding for `length` bytes at `at`.
+    pub fn syntax(&self, at: usize, length: usize, message: impl Into<String>) -> Finding {
         Finding::new(
             catalogue::SYNTAX,
             Span::new(self.source, at, at + length),
@@ -53,7 +59,7 @@ impl View<'_> {
         let text = &self.text[at..end];
         if text.len() < 2 || !text.ends_with('"') || text.ends_with("\\\"") {
             return Some(
-                self.at(
+                self.syntax(
                     at,
                     text.trim_end().len(),
                     "this text in quotes is not closed",
@@ -70,7 +76,7 @@ impl View<'_> {
             let (_, escaped) = letters.next()?;
             if !matches!(escaped, '"' | '\\' | 'n') {
                 return Some(
-                    self.at(
+                    self.syntax(
                         at + offset,
                         1 + escaped.len_utf8(),
                         format!("`\\{escaped}` means nothing in a text"),
@@ -87,7 +93,7 @@ impl View<'_> {
 
     fn not_ascii(&self, at: usize, next: char) -> Finding {
         let finding = self
-            .at(
+            .syntax(
                 at,
                 next.len_utf8(),
                 format!("the character `{next}` is no part of the language"),
@@ -112,7 +118,7 @@ impl View<'_> {
                     continue;
                 };
                 return Some(
-                    self.at(start, mark.len(), format!("`{mark}` is not written here"))
+                    self.syntax(start, mark.len(), format!("`{mark}` is not written here"))
                         .label("unknown mark")
                         .help(*help),
                 );
@@ -170,7 +176,7 @@ impl View<'_> {
         let start = at - whole;
         let (left, right) = (&self.text[start..at], &after[..fraction]);
         Some(
-            self.at(
+            self.syntax(
                 start,
                 whole + 1 + fraction,
                 "a decimal is written with a point",
@@ -178,112 +184,6 @@ impl View<'_> {
             .label("a decimal comma?")
             .help(format!("write `{left}.{right}`")),
         )
-    }
-
-    /// A bracket that is never closed, closed by another kind, or never opened.
-    fn brackets(&self, at: usize) -> Option<Finding> {
-        let mut open: Vec<(usize, char)> = Vec::new();
-        for (place, mark) in self.marks(at) {
-            match mark {
-                '(' | '[' | '{' => open.push((place, mark)),
-                ')' | ']' | '}' => drop(open.pop()),
-                _ => {}
-            }
-        }
-        let token = self.token(at);
-        let closes = |open: char| match open {
-            '(' => ")",
-            '[' => "]",
-            _ => "}",
-        };
-        let (last, closer) = match (open.last(), token) {
-            (None, ")" | "]" | "}") => {
-                return Some(
-                    self.at(at, 1, format!("this `{token}` closes nothing"))
-                        .label("no bracket is open here")
-                        .help("delete it, or open a bracket before it"),
-                );
-            }
-            (Some(&(place, mark)), _) => ((place, mark), closes(mark)),
-            (None, _) => return None,
-        };
-        let (place, mark) = last;
-        let crossed = matches!(token, ")" | "]" | "}") && token != closer;
-        let clause = matches!(
-            token,
-            "is" | "require" | "prefer" | "bits" | "note" | "then"
-        );
-        if crossed {
-            return Some(
-                self.at(at, 1, format!("`{mark}` is closed by `{token}`"))
-                    .label(format!("expected `{closer}`"))
-                    .related(Span::new(self.source, place, place + 1), "opened here")
-                    .help(format!(
-                        "write `{closer}` first, or open with another bracket"
-                    )),
-            );
-        }
-        let opened_on_this_line = !self.text[place..at].contains('\n');
-        if token.is_empty() || clause && !opened_on_this_line {
-            return Some(
-                self.at(place, 1, format!("this `{mark}` is never closed"))
-                    .label("opened here")
-                    .help(format!("write `{closer}` where it should end")),
-            );
-        }
-        None
-    }
-
-    /// Rows whose bars do not pair up: the first line with an odd number of them.
-    fn bars(&self, at: usize) -> Option<Finding> {
-        let places: Vec<usize> = self
-            .marks(self.range.end)
-            .filter(|&(_, mark)| mark == '|')
-            .map(|(place, _)| place)
-            .collect();
-        if places.len().is_multiple_of(2) || !places.iter().any(|&place| place <= at) {
-            return None;
-        }
-        let line_of = |place: usize| self.text[..place].rfind('\n').map_or(0, |end| end + 1);
-        let odd = places.iter().map(|&place| line_of(place)).find(|&line| {
-            !places
-                .iter()
-                .filter(|&&place| line_of(place) == line)
-                .count()
-                .is_multiple_of(2)
-        })?;
-        let first = *places.iter().find(|&&place| line_of(place) == odd)?;
-        let line_end = self.text[first..]
-            .find('\n')
-            .map_or(self.text.len(), |end| first + end);
-        let end = self.end_before(line_end.min(self.range.end)).max(first + 1);
-        Some(
-            self.at(first, end - first, "this row lacks one of its two bars")
-                .label("an odd number of `|` on this line")
-                .help("a row begins and ends with `|`: `| 1 0 1 |`"),
-        )
-    }
-
-    /// The brackets and bars before byte `end`, outside texts and comments.
-    fn marks(&self, end: usize) -> impl Iterator<Item = (usize, char)> {
-        let mut marks = Vec::new();
-        let mut at = self.range.start;
-        while at < end.min(self.range.end) {
-            let Some(next) = self.text[at..].chars().next() else {
-                break;
-            };
-            match next {
-                '"' => at = string_end(self.text, at),
-                '#' => at += self.text[at..].find('\n').unwrap_or(self.text.len() - at),
-                _ => {
-                    if matches!(next, '(' | ')' | '[' | ']' | '{' | '}' | '|') {
-                        marks.push((at, next));
-                    }
-                    at += next.len_utf8();
-                }
-            }
-        }
-        marks.into_iter()
     }
 
     fn glued_number(&self, at: usize) -> Option<Finding> {
@@ -296,7 +196,7 @@ impl View<'_> {
         if number.is_empty() || letters.is_empty() {
             return None;
         }
-        let finding = self.at(
+        let finding = self.syntax(
             at,
             token.len(),
             format!("`{token}` is neither a number nor a name"),
@@ -328,9 +228,35 @@ impl View<'_> {
             _ => "put brackets around it: `| 1 (a+1) 0 |`; entries are separated by blanks",
         };
         Some(
-            self.at(at, 1, format!("an entry of a row ends before `{sign}`"))
+            self.syntax(at, 1, format!("an entry of a row ends before `{sign}`"))
                 .label("inside a row")
                 .help(help),
+        )
+    }
+
+    /// `require corects 1`: a phrase whose first word is not quite one of the vocabulary.
+    fn misspelt_verb(&self, at: usize) -> Option<Finding> {
+        let word = self.before(at);
+        let start = self.end_before(at).checked_sub(word.len())?;
+        if !matches!(self.before(start), "require" | "prefer") || self.token(at).is_empty() {
+            return None;
+        }
+        let near: Vec<String> = near_names(word, PHRASE_VERBS.iter().copied())
+            .into_iter()
+            .filter(|verb| *verb != word)
+            .map(|verb| format!("`{verb}`"))
+            .collect();
+        if near.is_empty() {
+            return None;
+        }
+        Some(
+            self.syntax(
+                start,
+                word.len(),
+                format!("no requirement begins with `{word}`"),
+            )
+            .label("unknown word")
+            .help(format!("did you mean {}?", near.join(" or "))),
         )
     }
 
@@ -351,7 +277,7 @@ impl View<'_> {
             return None;
         }
         Some(
-            self.at(
+            self.syntax(
                 at,
                 word.len(),
                 format!("expected `then` before the step `{word}`"),
@@ -359,14 +285,6 @@ impl View<'_> {
             .label("a step?")
             .help(format!("a step begins with `then`: `then {word}`")),
         )
-    }
-
-    fn in_brackets(&self, at: usize) -> bool {
-        self.marks(at).fold(0i64, |depth, (_, mark)| match mark {
-            '(' | '[' | '{' => depth + 1,
-            ')' | ']' | '}' => depth - 1,
-            _ => depth,
-        }) > 0
     }
 
     fn missing_over(&self, at: usize, positives: &[Rule]) -> Option<Finding> {
@@ -379,7 +297,7 @@ impl View<'_> {
             return None;
         }
         Some(
-            self.at(
+            self.syntax(
                 at,
                 word.len(),
                 format!("expected `over` before the field `{word}`"),

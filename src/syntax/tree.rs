@@ -169,6 +169,8 @@ pub struct Clause {
 
 /// What a clause says.
 #[derive(Clone, Debug)]
+// A code has few clauses, and matching on a claim is plainer without a box.
+#[allow(clippy::large_enum_variant)]
 pub enum ClauseKind {
     /// `is [n, k, d] with weights {…}`
     Claim(Claim),

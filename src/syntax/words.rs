@@ -45,3 +45,56 @@ pub const RESERVED: &[&str] = &[
 pub fn is_reserved(word: &str) -> bool {
     RESERVED.contains(&word)
 }
+
+/// The words that begin a phrase of the requirement vocabulary.
+pub const PHRASE_VERBS: &[&str] = &[
+    "corrects",
+    "detects",
+    "recovers",
+    "repairs",
+    "miscorrects",
+    "never",
+    "contains",
+    "within",
+    "same",
+    "equivalent",
+    "meets",
+    "full",
+    "balanced",
+    "checks",
+    "divisible",
+    "quasi_cyclic",
+    "proper",
+];
+
+/// The other words of its phrases, for near matches.
+pub const PHRASE_WORDS: &[&str] = &[
+    "while",
+    "detecting",
+    "correcting",
+    "losses",
+    "errors",
+    "bursts",
+    "cyclic",
+    "adjacent",
+    "slips",
+    "most",
+    "miscorrects",
+    "singles",
+    "doubles",
+    "triples",
+    "reading",
+    "with",
+    "groups",
+    "rank",
+    "rows",
+    "index",
+    "code",
+    "matrix",
+    "positions",
+    "symbols",
+    "words",
+    "four_cycles",
+    "all_zeros",
+    "all_ones",
+];
