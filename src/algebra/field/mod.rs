@@ -325,6 +325,28 @@ impl Field {
         Some(steps.log(element, mul))
     }
 
+    /// `row += factor · other`, over the shorter of the two.
+    pub fn add_multiple(&self, row: &mut [Element], factor: Element, other: &[Element]) {
+        match (factor, &self.data.sums, &self.data.products) {
+            (0, _, _) => {}
+            (_, Sums::Xor, Products::Logarithms(logarithms)) => {
+                let log = logarithms.log(factor);
+                for (entry, &summand) in row.iter_mut().zip(other) {
+                    if summand != 0 {
+                        *entry ^= logarithms.exp((log + logarithms.log(summand)) as usize);
+                    }
+                }
+            }
+            _ => {
+                for (entry, &summand) in row.iter_mut().zip(other) {
+                    if summand != 0 {
+                        *entry = self.add(*entry, self.mul(factor, summand));
+                    }
+                }
+            }
+        }
+    }
+
     /// The least e ≥ 1 with `element^e = 1`; `None` for zero.
     pub fn multiplicative_order(&self, element: Element) -> Option<u64> {
         (element != 0).then(|| {

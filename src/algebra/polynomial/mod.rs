@@ -133,12 +133,8 @@ impl Polynomial {
         }
         let mut product = vec![0; self.coefficients.len() + other.coefficients.len() - 1];
         for (at, &coefficient) in self.coefficients.iter().enumerate() {
-            add_multiple(
-                &self.field,
-                &mut product[at..],
-                coefficient,
-                &other.coefficients,
-            );
+            self.field
+                .add_multiple(&mut product[at..], coefficient, &other.coefficients);
         }
         Polynomial::new(&self.field, product)
     }
@@ -158,12 +154,7 @@ impl Polynomial {
         for low in (0..quotient.len()).rev() {
             let factor = field.mul(rest[low + size], scale);
             quotient[low] = factor;
-            add_multiple(
-                field,
-                &mut rest[low..],
-                field.neg(factor),
-                &divisor.coefficients,
-            );
+            field.add_multiple(&mut rest[low..], field.neg(factor), &divisor.coefficients);
         }
         rest.truncate(size);
         (
@@ -258,25 +249,6 @@ impl Polynomial {
             }
         }
         power == x
-    }
-}
-
-/// `row += factor · other`, over the length of `other`.
-fn add_multiple(field: &Field, row: &mut [Element], factor: Element, other: &[Element]) {
-    match factor {
-        0 => {}
-        1 => {
-            for (entry, &summand) in row.iter_mut().zip(other) {
-                *entry = field.add(*entry, summand);
-            }
-        }
-        _ => {
-            for (entry, &summand) in row.iter_mut().zip(other) {
-                if summand != 0 {
-                    *entry = field.add(*entry, field.mul(factor, summand));
-                }
-            }
-        }
     }
 }
 

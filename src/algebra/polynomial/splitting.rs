@@ -185,7 +185,7 @@ impl PowerTable {
             let scale = field.mul(discrepancy, field.inv(last).expect("it was not zero"));
             let mut next = connection.clone();
             next.resize(next.len().max(previous.len() + shift), 0);
-            super::add_multiple(field, &mut next[shift..], field.neg(scale), &previous);
+            field.add_multiple(&mut next[shift..], field.neg(scale), &previous);
             if 2 * length <= at {
                 length = at + 1 - length;
                 previous = std::mem::replace(&mut connection, next);
