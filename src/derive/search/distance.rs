@@ -55,7 +55,7 @@ pub struct Settled {
     pub upper: usize,
     /// A word of weight `upper`, when one was found.
     pub word: Option<Vec<Element>>,
-    /// The grounds of every bound that was improved here, in the order they were found.
+    /// The grounds of both bounds as far as they were improved here, in the order they were found.
     pub says: Vec<Ground>,
 }
 
@@ -111,7 +111,17 @@ pub fn settle(
     search.lighten();
     search.close();
     search.show_a_word();
-    search.settled
+    let mut settled = search.settled;
+    let (lower, upper) = (settled.lower, settled.upper);
+    settled.says.retain(|ground| {
+        ground.value
+            == if ground.side == Side::Lower {
+                lower
+            } else {
+                upper
+            }
+    });
+    settled
 }
 
 struct Search<'a> {

@@ -15,7 +15,7 @@ const SEED: u64 = 0x5EA_7A11;
 /// Integers that stand for vectors, and how to add them.
 pub(super) trait Keys: Sync {
     /// The integer.
-    type Key: Copy + Eq + std::hash::Hash + Send + Sync;
+    type Key: Copy + Ord + Send + Sync;
 
     /// The key of a vector.
     fn key(&self, vector: &[Element]) -> Self::Key;
@@ -25,6 +25,9 @@ pub(super) trait Keys: Sync {
 
     /// A number below 2^bits; all numbers are hit about equally often.
     fn slot(&self, key: Self::Key, bits: u32) -> u64;
+
+    /// The lowest bits of a key, if those of a sum are the exclusive or of those of its parts.
+    fn low(&self, key: Self::Key) -> Option<usize>;
 
     /// The number of bits when keys are the vectors themselves, as plain numbers.
     fn exact_bits(&self) -> Option<u32>;
@@ -85,6 +88,11 @@ impl Keys for BitKeys {
             return key;
         }
         key.wrapping_mul(0x9E37_79B9_7F4A_7C15) >> (64 - bits)
+    }
+
+    #[inline]
+    fn low(&self, key: u64) -> Option<usize> {
+        Some(key as usize)
     }
 
     fn exact_bits(&self) -> Option<u32> {
@@ -177,6 +185,11 @@ impl Keys for LaneKeys {
             .wrapping_mul(0x9E37_79B9_7F4A_7C15)
             .wrapping_add(((key >> 64) as u64).wrapping_mul(0xC2B2_AE3D_27D4_EB4F));
         (folded ^ folded >> 29).wrapping_mul(0xBF58_476D_1CE4_E5B9) >> (64 - bits)
+    }
+
+    #[inline]
+    fn low(&self, _key: u128) -> Option<usize> {
+        None
     }
 
     fn exact_bits(&self) -> Option<u32> {

@@ -19,6 +19,8 @@ use crate::algebra::{Element, Matrix};
 const ROUNDS_AT_ONCE: u64 = 8;
 /// The most rounds, whatever the budget.
 const MOST_ROUNDS: u64 = 1 << 16;
+/// Work units of a round before any row is touched.
+const SETUP: u64 = 5000;
 /// The widest window, in bits.
 const WIDEST_WINDOW: u32 = 20;
 
@@ -78,7 +80,7 @@ fn cost_of_round(generator: &Matrix) -> u64 {
         generator.columns() as u64,
         generator.field().order(),
     );
-    let elimination = product(&[k, k, n, 4]);
+    let elimination = product(&[k, k, n, 4]).saturating_add(SETUP + 20 * n);
     let scalars = if q <= TABLE_ORDER {
         (q - 1) * (3 + n / 10)
     } else {
@@ -135,7 +137,11 @@ impl BinaryRows {
         let (k, width) = (self.rows.len() as u64, self.width as u64);
         let pairs = (k / 2 + 1) * (k / 2 + 2) / 2 + 1;
         let meetings = product(&[pairs, pairs]) >> window(pairs);
-        product(&[k, k, width]) / 2 + 20 * pairs + meetings.saturating_mul(2 + 2 * width)
+        SETUP
+            + 20 * self.length as u64
+            + product(&[k, k, width]) / 2
+            + 20 * pairs
+            + meetings.saturating_mul(2 + 2 * width)
     }
 
     /// The lightest word of one information set that is lighter than `below`.

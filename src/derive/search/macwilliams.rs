@@ -93,12 +93,12 @@ pub fn mds_weights(n: usize, k: usize, q: u64) -> Option<Counts> {
     let mut ways = binomial(n, d);
     // C(w−1, d−2), for w = d at first.
     let mut extra = BigInt::from(d - 1);
-    for w in d..=n {
+    for (w, entry) in counts.iter_mut().enumerate().skip(d) {
         let count = &ways * &less * &sum;
         if count.is_negative() {
             return None;
         }
-        counts[w] = count.magnitude().clone();
+        *entry = count.magnitude().clone();
         if w == n {
             break;
         }

@@ -18,6 +18,8 @@ mod keys;
 mod light_words;
 mod linear_program;
 mod macwilliams;
+mod marks;
+mod middle;
 mod transform;
 mod wording;
 
