@@ -66,7 +66,7 @@ fn text(view: &View) {
             "{} {:width$}  {}  {}\n",
             style.paint(colour, &format!("{:9}", verdict.word())),
             checked.compiled.title(),
-            view.parameters(&checked.compiled),
+            view.parameters(checked),
             counted(checked),
         ));
     }

@@ -95,7 +95,7 @@ fn diagram(view: &View) -> Diagram {
             .filter(|checked| checked.compiled.node == node)
             .collect();
         let caption = match codes.as_slice() {
-            [one] => view.parameters(&one.compiled),
+            [one] => view.parameters(one),
             [] => String::new(),
             many => format!("{} members", many.len()),
         };

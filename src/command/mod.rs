@@ -4,6 +4,7 @@
 mod check;
 mod draw;
 mod emit;
+mod explain;
 mod files;
 mod progress;
 mod report;
@@ -36,6 +37,8 @@ enum Command {
     Emit(emit::Arguments),
     /// Draw what depends on what
     Graph(draw::Arguments),
+    /// Explain a word of the language, a requirement or a finding
+    Explain(explain::Arguments),
 }
 
 /// The specs that a command works on, and what it may spend.
@@ -85,6 +88,7 @@ fn run(command: Command) -> ExitCode {
         Command::Table(arguments) => table::run(&arguments),
         Command::Emit(arguments) => emit::run(&arguments),
         Command::Graph(arguments) => draw::run(&arguments),
+        Command::Explain(arguments) => explain::run(&arguments),
     }
 }
 

@@ -38,7 +38,7 @@ pub struct Session<'a> {
 /// What is remembered of a code.
 struct Memo {
     /// Keeps the code, so that its key stays its own.
-    code: Code,
+    _code: Code,
     distance: Option<(Effort, Distance)>,
     weights: Option<Option<Weights>>,
     dual: Option<Code>,
@@ -48,7 +48,9 @@ struct Memo {
 /// How hard to look.
 #[derive(Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Debug)]
 pub enum Effort {
-    /// Theorems, and what costs next to nothing.
+    /// Theorems alone, with what little their parents cost.
+    Theorems,
+    /// And what costs next to nothing.
     Small,
     /// Up to the budget.
     Full,
@@ -71,7 +73,7 @@ impl<'a> Session<'a> {
     fn remember(&self, code: &Code, write: impl FnOnce(&mut Memo)) {
         let mut memo = self.memo.borrow_mut();
         write(memo.entry(code.key()).or_insert_with(|| Memo {
-            code: code.clone(),
+            _code: code.clone(),
             distance: None,
             weights: None,
             dual: None,
@@ -83,7 +85,7 @@ impl<'a> Session<'a> {
         let full = Budget::seconds(self.seconds);
         match effort {
             Effort::Full => full,
-            Effort::Small => full.limited_to(SMALL_WORK),
+            Effort::Theorems | Effort::Small => full.limited_to(SMALL_WORK),
         }
     }
 
@@ -103,6 +105,19 @@ impl<'a> Session<'a> {
         distance
     }
 
+    /// What is known of the minimum distance once the question is answered, looking harder step
+    /// by step and no harder than needed.
+    pub fn distance_until(&self, code: &Code, answered: impl Fn(&Distance) -> bool) -> Distance {
+        let mut distance = self.distance_by(code, Effort::Theorems);
+        for effort in [Effort::Small, Effort::Full] {
+            if answered(&distance) {
+                break;
+            }
+            distance = self.distance_by(code, effort);
+        }
+        distance
+    }
+
     fn derive_distance(&self, code: &Code, effort: Effort) -> Distance {
         let mut distance = Distance::unknown(code);
         if distance.lower == 0 {
@@ -114,7 +129,7 @@ impl<'a> Session<'a> {
         if distance.exact().is_none() {
             self.learn_from_weights(code, &mut distance);
         }
-        if distance.exact().is_none() {
+        if distance.exact().is_none() && effort > Effort::Theorems {
             self.search(code, &mut distance, effort);
         }
         distance
@@ -176,7 +191,7 @@ impl<'a> Session<'a> {
         if let Some(Some(weights)) = self.remembered(code, |memo| memo.weights.clone()) {
             return Some(weights);
         }
-        if effort == Effort::Small && self.remembered(code, |memo| memo.weights.clone()).is_some() {
+        if effort < Effort::Full && self.remembered(code, |memo| memo.weights.clone()).is_some() {
             return None;
         }
         let weights = self.derive_weights(code, effort);

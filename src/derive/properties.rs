@@ -92,7 +92,9 @@ fn mds(session: &Session, code: &Code) -> Judgement {
         return Judgement::undecided("the zero code has no distance");
     }
     let singleton = code.redundancy() + 1;
-    let distance = session.distance_by(code, Effort::Full);
+    let distance = session.distance_until(code, |known| {
+        known.lower == singleton || known.upper < singleton
+    });
     if distance.lower == singleton {
         Judgement::holds(format!("d = n - k + 1 = {singleton}"))
     } else if distance.upper < singleton {

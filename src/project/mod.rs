@@ -3,6 +3,7 @@
 //! In: texts and a loader. Out: a [`View`] on everything that is known, handed to whoever asked,
 //! and the findings. This is the whole compiler in one call; the rooms below only show it.
 
+use crate::code::Distance;
 use crate::derive::search::Progress;
 use crate::derive::{Effort, Session, SessionMeasures};
 use crate::evaluate::{self, CompiledCode, Evaluator};
@@ -142,13 +143,25 @@ pub fn class(findings: &[Finding]) -> Class {
 }
 
 impl View<'_> {
-    /// What is known of a code's distance, as text.
-    pub fn parameters(&self, compiled: &CompiledCode) -> String {
-        let code = &compiled.code;
+    /// What is known of a code's distance once its clauses are judged: no harder look than they
+    /// took, and a quick one where nothing was asked.
+    pub fn distance(&self, checked: &Checked) -> Distance {
+        let asked = !checked.verdicts.clauses.is_empty();
+        let effort = if asked {
+            Effort::Theorems
+        } else {
+            Effort::Small
+        };
+        self.session.distance_by(&checked.compiled.code, effort)
+    }
+
+    /// A code's parameters as text: `[72, 64, 4]`.
+    pub fn parameters(&self, checked: &Checked) -> String {
+        let code = &checked.compiled.code;
         let distance = if code.dimension() == 0 {
             "-".to_string()
         } else {
-            require::interval(&self.session.distance_by(code, Effort::Full))
+            require::interval(&self.distance(checked))
         };
         format!("[{}, {}, {distance}]", code.length(), code.dimension())
     }

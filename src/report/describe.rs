@@ -132,7 +132,10 @@ fn largest_distances(code: &Code, report: &mut CodeReport) {
     for (name, bound) in plain {
         report.bounds.push(name, bound(q, n, k) as u64);
     }
-    for (name, bound) in [("johnson", bounds::johnson(q, n, k)), ("elias", bounds::elias(q, n, k))] {
+    for (name, bound) in [
+        ("johnson", bounds::johnson(q, n, k)),
+        ("elias", bounds::elias(q, n, k)),
+    ] {
         if let Some(bound) = bound {
             report.bounds.push(name, bound as u64);
         }
@@ -246,7 +249,7 @@ pub fn summary(view: &View, checked: &Checked) -> Summary {
             .collect(),
         n: code.length(),
         k: code.dimension(),
-        d: interval(&view.session.distance_by(code, Effort::Full)),
+        d: interval(&view.distance(checked)),
         requirements: checked.verdicts.clauses.iter().map(requirement).collect(),
     }
 }

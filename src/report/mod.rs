@@ -7,6 +7,7 @@
 pub mod describe;
 pub mod document;
 pub mod drawing;
+pub mod explain;
 pub mod html;
 pub mod json;
 pub mod markdown;

@@ -1,6 +1,7 @@
 //! `is [n, k, d] with weights {…}`.
 
 use super::{Court, Judged, Kind, Verdicts, claim_code, interval};
+use crate::code::Distance;
 use crate::derive::{Effort, Judgement, Verdict, support};
 use crate::evaluate::{Claimed, CompiledCode, Expected, position_names};
 use crate::finding::{Finding, catalogue};
@@ -103,9 +104,13 @@ impl Court<'_> {
             verdicts.findings.push(finding);
             return Judgement::fails("the zero code has no distance");
         }
-        let distance = self.session.distance_by(&compiled.code, Effort::Full);
+        let wanted_size = clamped(wanted);
+        let decided = |known: &Distance| {
+            interval_verdict(*operator, wanted_size, known.lower, known.upper) != Verdict::Undecided
+        };
+        let distance = self.session.distance_until(&compiled.code, decided);
         let shown = interval(&distance);
-        let verdict = interval_verdict(*operator, clamped(wanted), distance.lower, distance.upper);
+        let verdict = interval_verdict(*operator, wanted_size, distance.lower, distance.upper);
         let judgement = match verdict {
             Verdict::Holds => {
                 return Judgement::holds(format!("d = {shown}")).witness(distance.witness);

@@ -162,7 +162,9 @@ fn by_distance(
             "the code has only one word, so no error leads to another",
         ));
     }
-    let distance = asked.court.session.distance_by(code, Effort::Full);
+    let session = asked.court.session;
+    let distance =
+        session.distance_until(code, |known| known.lower >= needed || known.upper < needed);
     let shown = interval(&distance);
     if distance.lower >= needed {
         let known = if distance.exact().is_some() {
