@@ -173,10 +173,10 @@ fn choose(
 ) -> Result<RootConvention, RootError> {
     if let Some(stated) = root_field {
         let contains = stated.characteristic() == field.characteristic()
-            && stated.degree().is_multiple_of(field.degree());
+            && stated.degree() % field.degree() == 0;
         return if !contains {
             Err(RootError::NotAnExtension)
-        } else if !(stated.order() - 1).is_multiple_of(length) {
+        } else if (stated.order() - 1) % length != 0 {
             Err(RootError::NoPrimitiveRoot { degree })
         } else {
             Ok(RootConvention::Stated(stated.clone()))
