@@ -1,3 +1,4 @@
+use super::residues::Residues;
 use super::*;
 
 fn conway_text(p: u64, m: u32) -> String {
@@ -276,4 +277,65 @@ fn conway_generators_are_compatible() {
             field.power_of_generator(exponent)
         );
     }
+}
+
+#[test]
+fn coordinates_combine_to_the_element() {
+    for (p, m, d) in [
+        (2, 8, 1),
+        (2, 8, 4),
+        (2, 6, 3),
+        (3, 4, 2),
+        (5, 3, 1),
+        (2, 4, 4),
+    ] {
+        let (field, sub) = (Field::conway(p, m).unwrap(), Field::conway(p, d).unwrap());
+        let embedding = field.embedding_of(&sub).unwrap();
+        let normal = (1..field.order() as u32)
+            .find_map(|e| embedding.normal_basis(e))
+            .unwrap();
+        for basis in [embedding.polynomial_basis(), normal] {
+            for (basis, dual) in [(&basis, basis.dual()), (&basis.dual(), basis.clone())] {
+                for (i, &left) in basis.elements().iter().enumerate() {
+                    for (j, &right) in dual.elements().iter().enumerate() {
+                        let trace = embedding.trace(field.mul(left, right));
+                        assert_eq!(trace, u32::from(i == j));
+                    }
+                }
+                for element in sample(&field) {
+                    let coordinates = basis.coordinates(element);
+                    assert!(coordinates.iter().all(|&c| u64::from(c) < sub.order()));
+                    assert_eq!(basis.combine(&coordinates), element);
+                }
+            }
+        }
+    }
+    let bytes = Field::conway(2, 8).unwrap();
+    let bits = bytes.embedding_of(&Field::prime(2).unwrap()).unwrap();
+    // In the polynomial basis over GF(2) the coordinates are the bits of the integer.
+    assert_eq!(
+        bits.polynomial_basis().coordinates(0x1d),
+        [1, 0, 1, 1, 1, 0, 0, 0]
+    );
+    let other = Field::with_modulus(2, &[1, 1, 0, 1, 1, 0, 0, 0, 1], false).unwrap();
+    let digits = other
+        .embedding_of(&Field::prime(2).unwrap())
+        .unwrap()
+        .polynomial_basis();
+    assert_eq!(digits.elements(), [1, 2, 4, 8, 16, 32, 64, 128]);
+    let alone = Field::prime(7).unwrap();
+    assert_eq!(
+        alone
+            .embedding_of(&alone)
+            .unwrap()
+            .polynomial_basis()
+            .elements(),
+        [1]
+    );
+    assert!(bits.basis(&[1, 2, 4, 8, 16, 32, 64, 127]).is_none());
+    assert!(bits.basis(&[1, 2]).is_none());
+    assert!(bits.basis(&[1, 2, 4, 8, 16, 32, 64, 256]).is_none());
+    // Over a subfield, independence over GF(2) is not enough.
+    let nibbles = bytes.embedding_of(&Field::conway(2, 4).unwrap()).unwrap();
+    assert!(nibbles.basis(&[1, nibbles.up(2)]).is_none());
 }

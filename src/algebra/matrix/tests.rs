@@ -273,7 +273,9 @@ fn every_storage_moves_entries_alike() {
                 Matrix::from_fn(&field, rows, columns, entry)
             };
             for kind in [&dense, &sparse] {
-                assert!(*kind == dense && dense == *kind && kind.to_dense() == dense);
+                for (left, right) in [(kind, &dense), (&dense, kind), (&kind.to_dense(), &dense)] {
+                    assert_eq!(left, right);
+                }
                 assert_eq!(
                     kind.transpose(),
                     plain(columns, rows, &|r, c| dense.get(c, r))

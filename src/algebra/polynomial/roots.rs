@@ -15,8 +15,9 @@ use crate::algebra::{Element, Embedding, Field};
 /// Above this order of the splitting field, β is a root of a cyclotomic factor.
 const CONWAY_LIMIT: u64 = 1 << 20;
 
-/// Lengths up to this are factored when the splitting field is above [`CONWAY_LIMIT`].
-const FACTORED_LENGTH: u64 = 4096;
+/// Above [`CONWAY_LIMIT`], cyclotomic polynomials are factored while n² · log₂ q is at most this: a
+/// few seconds' work.
+const FACTORING_LIMIT: u64 = 1 << 27;
 
 /// A generator polynomial and the roots it has.
 #[derive(Clone, PartialEq, Eq, Debug)]
@@ -140,26 +141,39 @@ pub fn generator_from_roots(
     })?;
     let convention = choose(field, length, degree, root_field)?;
     let cosets = cosets_of(q, length, exponents);
-    let generator = match &convention {
+    let exponents: BTreeSet<u64> = cosets.iter().flatten().copied().collect();
+    // With more roots than not, the roots left out are less work: their polynomial divides x^n − 1.
+    let complement = exponents.len() as u64 > length / 2;
+    let needed = if complement {
+        let others = (0..length)
+            .filter(|exponent| !exponents.contains(exponent))
+            .collect();
+        cosets_of(q, length, &others)
+    } else {
+        cosets
+    };
+    let mut generator = match &convention {
         RootConvention::LeastFactor(factor) => {
             let powers = PowerTable::new(factor, length as usize);
-            product(
-                field,
-                cosets
-                    .iter()
-                    .map(|coset| powers.minimal_polynomial(coset[0])),
-            )
+            let minimal = needed
+                .iter()
+                .map(|coset| powers.minimal_polynomial(coset[0]));
+            product(field, minimal)
         }
         RootConvention::OwnField(large)
         | RootConvention::Stated(large)
         | RootConvention::Conway(large) => {
             let embedding = large.embedding_of(field).ok_or(RootError::NotAnExtension)?;
-            generator_in(&embedding, length, &cosets)
+            generator_in(&embedding, length, &needed)
         }
     };
+    if complement {
+        let modulus = Polynomial::cyclic_modulus(field, length as usize);
+        generator = modulus.div_rem(&generator).0;
+    }
     Ok(CyclicRoots {
         generator,
-        exponents: cosets.into_iter().flatten().collect(),
+        exponents,
         extension_degree: degree,
         convention,
     })
@@ -173,10 +187,10 @@ fn choose(
 ) -> Result<RootConvention, RootError> {
     if let Some(stated) = root_field {
         let contains = stated.characteristic() == field.characteristic()
-            && stated.degree().is_multiple_of(field.degree());
+            && stated.degree() % field.degree() == 0;
         return if !contains {
             Err(RootError::NotAnExtension)
-        } else if !(stated.order() - 1).is_multiple_of(length) {
+        } else if (stated.order() - 1) % length != 0 {
             Err(RootError::NoPrimitiveRoot { degree })
         } else {
             Ok(RootConvention::Stated(stated.clone()))
@@ -194,7 +208,8 @@ fn choose(
             .expect("fields up to the limit are supported");
         return Ok(RootConvention::Conway(large));
     }
-    if length > FACTORED_LENGTH {
+    let work = u128::from(length).pow(2) * u128::from(field.order().ilog2());
+    if work > u128::from(FACTORING_LIMIT) {
         return Err(RootError::TooLarge { degree });
     }
     let factor = super::splitting::least_cyclotomic_factor(field, length as usize);

@@ -108,7 +108,9 @@ fn known_generators_of_length_fifteen() {
 
 #[test]
 fn generators_have_the_roots_of_their_set() {
-    let cases: [(u64, u32, u64, &[u64]); 8] = [
+    let cases: [(u64, u32, u64, &[u64]); 10] = [
+        (2, 1, 15, &[0, 1, 3, 7]),
+        (2, 3, 7, &[0, 1, 2, 4, 5]),
         (2, 1, 21, &[1, 2, 3]),
         (2, 1, 23, &[1]),
         (3, 1, 11, &[1]),
@@ -150,7 +152,7 @@ fn generators_have_the_roots_of_their_set() {
 fn large_splitting_fields_are_reached_through_a_factor() {
     for n in [47, 79, 97, 103] {
         let bits = field(2, 1);
-        let asked = BTreeSet::from([1, 3]);
+        let asked = BTreeSet::from([0, 1, n - 1]);
         let roots = generator_from_roots(&bits, n, &asked, None).unwrap();
         let RootConvention::LeastFactor(factor) = &roots.convention else {
             panic!("{n}: the splitting field is large");
@@ -249,13 +251,11 @@ fn cosets_are_closed() {
 }
 
 #[test]
-fn long_generators_are_quick() {
-    let start = std::time::Instant::now();
+fn long_generators_have_their_degree() {
     let symbols = field(2, 16);
     let roots = generator_from_roots(&symbols, 65535, &(0..32).collect(), None).unwrap();
     assert_eq!(roots.generator.degree(), Some(32));
     let odd = (0..60).map(|i| 2 * i + 1).collect();
     let roots = generator_from_roots(&field(2, 1), 32767, &odd, None).unwrap();
     assert_eq!(roots.generator.degree(), Some(900));
-    eprintln!("{:?}", start.elapsed());
 }

@@ -83,12 +83,9 @@ impl Matrix {
             counted_columns[column] = true;
         }
         let part = self.select_rows(&rest);
-        let mut columns: Vec<usize> = Vec::new();
-        for column in 0..self.columns {
-            if !counted_columns[column] && part.column_weight(column) > 0 {
-                columns.push(column);
-            }
-        }
+        let columns: Vec<usize> = (0..self.columns)
+            .filter(|&column| !counted_columns[column] && part.column_weight(column) > 0)
+            .collect();
         counted.len()
             + part
                 .select_columns(&columns)

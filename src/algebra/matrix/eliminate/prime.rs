@@ -1,14 +1,16 @@
 //! Elimination over prime fields, a panel of columns at a time.
 //!
-//! A panel's pivots are found on a copy of its columns alone. The pivot rows are reduced among
-//! themselves; all other rows then take their multiples of all of them in one sweep, summed
-//! without reduction modulo p for as long as the sums are exact.
+//! A panel's pivots are found on a copy of its columns alone. The pivot rows are multiplied by the
+//! inverse of what they have in the pivot columns; all other rows then take their multiples of all
+//! of them in one sweep, summed without reduction modulo p for as long as the sums are exact.
+
+use std::ops::Range;
 
 use super::swap_rows;
 use crate::algebra::Field;
 
 /// Columns in a panel.
-const PANEL: usize = 48;
+const PANEL: usize = 32;
 
 /// Columns summed at a time, to stay in the nearest cache.
 const SWEEP: usize = 256;
@@ -22,8 +24,8 @@ pub(super) trait Residue: Copy + Default + PartialEq + Into<u64> {
     fn widen(self) -> Self::Sum;
     /// How many products of two residues a sum holds exactly beside one residue.
     fn capacity(p: u64) -> usize;
-    /// `sums += factor · row`.
-    fn accumulate(sums: &mut [Self::Sum], factor: Self, row: &[Self::Sum]);
+    /// `sums += factors · rows`, four rows at once.
+    fn accumulate(sums: &mut [Self::Sum], factors: [Self; 4], rows: [&[Self::Sum]; 4]);
     /// `entries = sums mod p`.
     fn settle(sums: &[Self::Sum], modulus: &Modulus, entries: &mut [Self]);
 }
@@ -41,25 +43,31 @@ impl Residue for u8 {
     }
 
     fn capacity(p: u64) -> usize {
-        ((1 << 24) - p) as usize / ((p - 1) * (p - 1)) as usize
+        // Quotients stay below 2^22, where rounding works: for p ≥ 3, sums below 3 · 2^22.
+        ((3 << 22) - p) as usize / ((p - 1) * (p - 1)) as usize
     }
 
-    fn accumulate(sums: &mut [f32], factor: u8, row: &[f32]) {
-        let factor = f32::from(factor);
-        for (sum, &entry) in sums.iter_mut().zip(row) {
-            *sum += factor * entry;
+    fn accumulate(sums: &mut [f32], factors: [u8; 4], rows: [&[f32]; 4]) {
+        let factors = factors.map(f32::from);
+        let rows = rows.map(|row| &row[..sums.len()]);
+        for (at, sum) in sums.iter_mut().enumerate() {
+            let left = factors[0] * rows[0][at] + factors[1] * rows[1][at];
+            let right = factors[2] * rows[2][at] + factors[3] * rows[3][at];
+            *sum += left + right;
         }
     }
 
     fn settle(sums: &[f32], modulus: &Modulus, entries: &mut [u8]) {
+        // Adding and taking away 1.5 · 2^23 rounds to a whole number; adding 2^23 leaves a whole
+        // number in the low bits. Conversions by `as` are exact as well, but several times slower.
+        const ROUND: f32 = 12_582_912.0;
+        const WHOLE: f32 = 8_388_608.0;
         let (p, inverse) = (modulus.p as f32, 1.0 / modulus.p as f32);
         for (entry, &sum) in entries.iter_mut().zip(sums) {
-            // The quotient is at most one off, and every number here a whole one below 2^24.
-            let quotient = (sum * inverse) as i32 as f32;
+            let quotient = (sum * inverse + ROUND) - ROUND;
             let rest = sum - quotient * p;
             let rest = if rest < 0.0 { rest + p } else { rest };
-            let rest = if rest >= p { rest - p } else { rest };
-            *entry = rest as i32 as u8;
+            *entry = (rest + WHOLE).to_bits() as u8;
         }
     }
 }
@@ -80,10 +88,13 @@ impl Residue for u32 {
         ((u64::MAX - p) / ((p - 1) * (p - 1))).min(1 << 20) as usize
     }
 
-    fn accumulate(sums: &mut [u64], factor: u32, row: &[u64]) {
-        for (sum, &entry) in sums.iter_mut().zip(row) {
-            // Both are below 2^31; saying so lets the compiler use half-width products.
-            *sum += u64::from(factor) * (entry & 0xffff_ffff);
+    fn accumulate(sums: &mut [u64], factors: [u32; 4], rows: [&[u64]; 4]) {
+        let factors = factors.map(u64::from);
+        let rows = rows.map(|row| &row[..sums.len()]);
+        // All are below 2^31; saying so lets the compiler use half-width products.
+        let product = |k: usize, at: usize| factors[k] * (rows[k][at] & 0xffff_ffff);
+        for (at, sum) in sums.iter_mut().enumerate() {
+            *sum += product(0, at) + product(1, at) + product(2, at) + product(3, at);
         }
     }
 
@@ -109,7 +120,7 @@ impl Modulus {
     }
 
     fn reduce(&self, value: u64) -> u64 {
-        let quotient = (u128::from(value) * u128::from(self.reciprocal) >> 64) as u64;
+        let quotient = ((u128::from(value) * u128::from(self.reciprocal)) >> 64) as u64;
         let mut rest = value - quotient * self.p;
         while rest >= self.p {
             rest -= self.p;
@@ -138,8 +149,14 @@ pub(super) fn reduce<T: Residue>(
         if found.is_empty() {
             continue;
         }
-        reduce_pivot_rows(field, &modulus, entries, columns, rank, &found);
-        sweep(&modulus, entries, columns, rank, &found);
+        let panel = Panel {
+            modulus: &modulus,
+            columns,
+            rank,
+            found: &found,
+        };
+        panel.reduce_pivot_rows(field, entries);
+        panel.clear_other_rows(entries);
         pivots.extend(found);
     }
     pivots
@@ -153,7 +170,7 @@ fn find_pivots<T: Residue>(
     entries: &mut [T],
     columns: usize,
     rank: usize,
-    range: std::ops::Range<usize>,
+    range: Range<usize>,
 ) -> Vec<usize> {
     let rows = entries.len() / columns;
     let width = range.len();
@@ -195,81 +212,111 @@ fn negated_inverse(field: &Field, value: u64) -> u64 {
         .into()
 }
 
-/// Textbook elimination among the pivot rows.
-fn reduce_pivot_rows<T: Residue>(
-    field: &Field,
-    modulus: &Modulus,
-    entries: &mut [T],
+/// The pivots of a panel: columns `found`, in the rows from `rank` on.
+struct Panel<'a> {
+    modulus: &'a Modulus,
     columns: usize,
     rank: usize,
-    found: &[usize],
-) {
-    let rows = &mut entries[rank * columns..(rank + found.len()) * columns];
-    for (at, &column) in found.iter().enumerate() {
-        let start = found[0];
-        let lead: u64 = rows[at * columns + column].into();
-        let scale = u64::from(field.inv(lead as u32).expect("a pivot is not zero"));
-        for entry in &mut rows[at * columns + start..(at + 1) * columns] {
-            *entry = T::from_u64(modulus.reduce(scale * (*entry).into()));
-        }
-        let pivot = rows[at * columns + start..(at + 1) * columns].to_vec();
-        for (other, row) in rows.chunks_exact_mut(columns).enumerate() {
-            let lead: u64 = row[column].into();
-            if other != at && lead != 0 {
-                let factor = modulus.p - lead;
-                for (entry, &add) in row[start..].iter_mut().zip(&pivot) {
-                    *entry = T::from_u64(modulus.reduce((*entry).into() + factor * add.into()));
-                }
-            }
-        }
-    }
+    found: &'a [usize],
 }
 
-/// Clears the found columns in all rows but the pivot rows.
-fn sweep<T: Residue>(
-    modulus: &Modulus,
-    entries: &mut [T],
-    columns: usize,
-    rank: usize,
-    found: &[usize],
-) {
-    let count = found.len();
-    let capacity = T::capacity(modulus.p);
-    let factors: Vec<T> = entries
-        .chunks_exact(columns)
-        .flat_map(|row| {
-            found.iter().map(|&column| {
-                let value: u64 = row[column].into();
-                T::from_u64((modulus.p - value) % modulus.p)
-            })
-        })
-        .collect();
-    for left in (found[0]..columns).step_by(SWEEP) {
-        let right = columns.min(left + SWEEP);
-        let pivot_rows: Vec<Vec<T::Sum>> = (rank..rank + count)
-            .map(|row| {
-                let part = &entries[row * columns + left..row * columns + right];
-                part.iter().map(|&entry| entry.widen()).collect()
+impl Panel<'_> {
+    /// Multiplies the pivot rows by the inverse of their part in the pivot columns.
+    fn reduce_pivot_rows<T: Residue>(&self, field: &Field, entries: &mut [T]) {
+        let rows = self.rank..self.rank + self.found.len();
+        let inverse = self.inverse(field, entries);
+        self.sweep(entries, rows, &inverse, false);
+    }
+
+    /// The inverse of the pivot rows' part in the pivot columns, by textbook elimination beside the
+    /// identity.
+    fn inverse<T: Residue>(&self, field: &Field, entries: &[T]) -> Vec<T> {
+        let (count, modulus) = (self.found.len(), self.modulus);
+        let mut rows: Vec<Vec<u64>> = (0..count)
+            .map(|at| {
+                let row = &entries[(self.rank + at) * self.columns..];
+                let left = self.found.iter().map(|&column| row[column].into());
+                let right = (0..count).map(|column| u64::from(column == at));
+                left.chain(right).collect()
             })
             .collect();
-        let mut sums = vec![T::Sum::default(); right - left];
-        for (row, factors) in factors.chunks_exact(count).enumerate() {
-            if row >= rank && row < rank + count {
-                continue;
+        for at in 0..count {
+            let found = (at..count)
+                .find(|&row| rows[row][at] != 0)
+                .expect("the pivot rows are independent in the pivot columns");
+            rows.swap(at, found);
+            let scale = modulus.p - negated_inverse(field, rows[at][at]);
+            let mut pivot = std::mem::take(&mut rows[at]);
+            for entry in &mut pivot {
+                *entry = modulus.reduce(*entry * scale);
             }
-            let part = &mut entries[row * columns + left..row * columns + right];
-            for (some_factors, some_rows) in
-                factors.chunks(capacity).zip(pivot_rows.chunks(capacity))
-            {
-                for (sum, &entry) in sums.iter_mut().zip(part.iter()) {
-                    *sum = entry.widen();
+            for row in rows.iter_mut().filter(|row| !row.is_empty()) {
+                let factor = modulus.p - row[at];
+                for (entry, &add) in row.iter_mut().zip(&pivot) {
+                    *entry = modulus.reduce(*entry + factor * add);
                 }
-                for (&factor, pivot_row) in some_factors.iter().zip(some_rows) {
-                    if factor != T::default() {
-                        T::accumulate(&mut sums, factor, pivot_row);
+            }
+            rows[at] = pivot;
+        }
+        let right = rows.iter().flat_map(|row| &row[count..]);
+        right.map(|&value| T::from_u64(value)).collect()
+    }
+
+    /// Clears the pivot columns in all rows but the pivot rows.
+    fn clear_other_rows<T: Residue>(&self, entries: &mut [T]) {
+        let count = self.found.len();
+        let factors: Vec<T> = entries
+            .chunks_exact(self.columns)
+            .flat_map(|row| {
+                self.found.iter().map(|&column| {
+                    let value: u64 = row[column].into();
+                    T::from_u64((self.modulus.p - value) % self.modulus.p)
+                })
+            })
+            .collect();
+        let (before, after) = (self.rank, self.rank + count);
+        let rows = entries.len() / self.columns;
+        self.sweep(entries, 0..before, &factors[..before * count], true);
+        self.sweep(entries, after..rows, &factors[after * count..], true);
+    }
+
+    /// Gives each of the rows its `factors` times the pivot rows, as they were before, added to
+    /// what it is or in its place.
+    fn sweep<T: Residue>(&self, entries: &mut [T], rows: Range<usize>, factors: &[T], add: bool) {
+        let (count, columns) = (self.found.len(), self.columns);
+        // The factors of a row in fours, and fours in runs that a sum can hold.
+        let fours = count.div_ceil(4);
+        let run = (T::capacity(self.modulus.p) / 4).min(fours);
+        for left in (self.found[0]..columns).step_by(SWEEP) {
+            let right = columns.min(left + SWEEP);
+            let mut pivot_rows = vec![vec![T::Sum::default(); right - left]; 4 * fours];
+            for (row, wide) in (self.rank..self.rank + count).zip(&mut pivot_rows) {
+                let part = &entries[row * columns + left..row * columns + right];
+                for (wide, &entry) in wide.iter_mut().zip(part) {
+                    *wide = entry.widen();
+                }
+            }
+            let mut sums = vec![T::Sum::default(); right - left];
+            for (row, factors) in rows.clone().zip(factors.chunks_exact(count)) {
+                let part = &mut entries[row * columns + left..row * columns + right];
+                if !add {
+                    part.fill(T::default());
+                }
+                let factor = |at: usize| factors.get(at).copied().unwrap_or_default();
+                for start in (0..fours).step_by(run) {
+                    for (sum, &entry) in sums.iter_mut().zip(part.iter()) {
+                        *sum = entry.widen();
                     }
+                    for four in start..fours.min(start + run) {
+                        let at = 4 * four;
+                        let group = [factor(at), factor(at + 1), factor(at + 2), factor(at + 3)];
+                        if group.iter().any(|&factor| factor != T::default()) {
+                            let rows = std::array::from_fn(|k| &pivot_rows[at + k][..]);
+                            T::accumulate(&mut sums, group, rows);
+                        }
+                    }
+                    T::settle(&sums, self.modulus, part);
                 }
-                T::settle(&sums, modulus, part);
             }
         }
     }
