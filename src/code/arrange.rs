@@ -35,11 +35,9 @@ fn unit_columns(matrix: &Matrix) -> Vec<usize> {
     let mut count = vec![0usize; matrix.columns()];
     let mut place = vec![0usize; matrix.columns()];
     for row in 0..matrix.rows() {
-        for (column, &entry) in matrix.row(row).iter().enumerate() {
-            if entry != 0 {
-                count[column] += 1;
-                place[column] = row;
-            }
+        for (column, _) in matrix.nonzero(row) {
+            count[column] += 1;
+            place[column] = row;
         }
     }
     for column in 0..matrix.columns() {

@@ -16,7 +16,7 @@ pub fn check_matrix(code: &Code) -> &Matrix {
 /// The number of non-zero entries of each row of a matrix.
 pub fn row_weights(matrix: &Matrix) -> Vec<usize> {
     (0..matrix.rows())
-        .map(|row| matrix.row(row).iter().filter(|&&entry| entry != 0).count())
+        .map(|row| matrix.row_weight(row))
         .collect()
 }
 
@@ -24,8 +24,8 @@ pub fn row_weights(matrix: &Matrix) -> Vec<usize> {
 pub fn column_weights(matrix: &Matrix) -> Vec<usize> {
     let mut weights = vec![0; matrix.columns()];
     for row in 0..matrix.rows() {
-        for (column, &entry) in matrix.row(row).iter().enumerate() {
-            weights[column] += usize::from(entry != 0);
+        for (column, _) in matrix.nonzero(row) {
+            weights[column] += 1;
         }
     }
     weights
@@ -38,12 +38,10 @@ pub fn girth(matrix: &Matrix) -> Result<Option<usize>, ()> {
     let mut neighbours: Vec<Vec<usize>> = vec![Vec::new(); rows + matrix.columns()];
     let mut edges = 0;
     for row in 0..rows {
-        for (column, &entry) in matrix.row(row).iter().enumerate() {
-            if entry != 0 {
-                neighbours[row].push(rows + column);
-                neighbours[rows + column].push(row);
-                edges += 1;
-            }
+        for (column, _) in matrix.nonzero(row) {
+            neighbours[row].push(rows + column);
+            neighbours[rows + column].push(row);
+            edges += 1;
         }
     }
     if edges > EDGES || edges.saturating_mul(rows) > 1 << 32 {

@@ -136,7 +136,8 @@ impl Evaluator<'_> {
         let size = self.size(size, scope, "the size of a block", 1, 1 << 20)?;
         let width = rows.first().map_or(0, Vec::len);
         self.fits(rows.len() * size, width.saturating_mul(size), span)?;
-        let mut entries: Vec<Vec<(usize, u32)>> = vec![Vec::new(); rows.len() * size];
+        let height = rows.len() * size;
+        let mut entries: Vec<Vec<(usize, u32)>> = vec![Vec::new(); height];
         for (block_row, row) in rows.iter().enumerate() {
             if row.len() != width {
                 let place = row.iter().flatten().next().map_or(span, |entry| entry.span);
@@ -155,7 +156,7 @@ impl Evaluator<'_> {
                 }
             }
         }
-        let matrix = sparse(&field, width * size, entries);
+        let matrix = Matrix::from_sparse(&field, height, width * size, entries);
         Ok(Value::Matrix(Arc::new(matrix)))
     }
 
@@ -180,17 +181,6 @@ impl Evaluator<'_> {
         }
         Ok(())
     }
-}
-
-/// A matrix from the non-zero entries of each row.
-fn sparse(field: &Field, columns: usize, entries: Vec<Vec<(usize, u32)>>) -> Matrix {
-    let mut matrix = Matrix::zero(field, entries.len(), columns);
-    for (row, places) in entries.into_iter().enumerate() {
-        for (column, value) in places {
-            matrix.set(row, column, value);
-        }
-    }
-    matrix
 }
 
 /// An entry of a matrix: an element, or the negative of one.

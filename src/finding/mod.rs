@@ -118,7 +118,7 @@ pub fn near_names<'a>(wanted: &str, known: impl IntoIterator<Item = &'a str>) ->
                 || (wanted.len() >= 4 && name.starts_with(wanted))
         })
         .collect();
-    scored.sort_by(|left, right| left.cmp(right));
+    scored.sort();
     scored.dedup_by(|left, right| left.1 == right.1);
     scored.into_iter().take(3).map(|(_, name)| name).collect()
 }
