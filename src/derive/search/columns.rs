@@ -9,7 +9,8 @@ use std::collections::HashMap;
 
 use super::arithmetic::{Arithmetic, choose, product};
 use super::keys::{BitKeys, LaneKeys};
-use super::middle::{Middle, cost_of_middle, likely_cost};
+use super::middle::{cost_of_middle, likely_cost};
+use super::sums::Middle;
 use super::{Budget, LightWord};
 use crate::algebra::{Element, Matrix};
 

@@ -20,6 +20,7 @@ mod linear_program;
 mod macwilliams;
 mod marks;
 mod middle;
+mod sums;
 mod transform;
 mod wording;
 
