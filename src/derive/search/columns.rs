@@ -108,7 +108,7 @@ fn costs(q: u64, n: usize, redundancy: usize, weight: usize) -> (u64, u64) {
 }
 
 impl<'a> Columns<'a> {
-    fn new(check: &'a Matrix) -> Columns<'a> {
+    pub(super) fn new(check: &'a Matrix) -> Columns<'a> {
         let reduced = check.reduced().matrix;
         let even = check.field().is_binary() && {
             let ones = Matrix::from_fn(check.field(), 1, check.columns(), |_, _| 1);

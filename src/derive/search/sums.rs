@@ -178,3 +178,51 @@ impl<'a, K: Keys> Middle<'a, K> {
         true
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::algebra::{Field, Matrix};
+    use crate::derive::search::keys::{BitKeys, LaneKeys};
+
+    fn every_sum_has_one_pass<K: Keys>(columns: &Columns, keys: K) {
+        let middle = Middle::new(columns, keys);
+        for size in 1..=3 {
+            for normed in [false, true] {
+                let kind = Kind { size, normed };
+                let all = |rounds: usize| -> Vec<(K::Key, Vec<usize>)> {
+                    let mut seen = Vec::new();
+                    for pass in middle.passes(rounds) {
+                        for top in size - 1..middle.columns.columns.len() {
+                            middle.each_sum(&pass, top, kind, &mut |key, stack, flat| {
+                                seen.push((key, [stack, &[flat]].concat()));
+                                true
+                            });
+                        }
+                    }
+                    seen.sort_unstable();
+                    seen
+                };
+                let plain = all(1);
+                assert_eq!(plain.len() as u64, middle.sums(kind));
+                assert!(all(4) == plain && all(16) == plain, "{size} columns");
+            }
+        }
+    }
+
+    #[test]
+    fn passes_share_the_sums_out() {
+        for (p, rows, n) in [(2, 9, 14), (2, 70, 75), (3, 5, 8), (3, 60, 62), (5, 3, 6)] {
+            let field = Field::prime(p).unwrap();
+            let check = Matrix::from_fn(&field, rows, n, |row, column| {
+                ((row * row + 3 * row * column + column * column * column) as u64 % p) as Element
+            });
+            let columns = Columns::new(&check);
+            if p == 2 {
+                every_sum_has_one_pass(&columns, BitKeys::new(&field, columns.rank));
+            } else {
+                every_sum_has_one_pass(&columns, LaneKeys::new(&field, columns.rank));
+            }
+        }
+    }
+}
