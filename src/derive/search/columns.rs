@@ -9,7 +9,8 @@ use std::collections::HashMap;
 
 use super::arithmetic::{Arithmetic, choose, product};
 use super::keys::{BitKeys, LaneKeys};
-use super::middle::{Middle, cost_of_middle, likely_cost};
+use super::middle::{cost_of_middle, likely_cost};
+use super::sums::Middle;
 use super::{Budget, LightWord};
 use crate::algebra::{Element, Matrix};
 
@@ -107,7 +108,7 @@ fn costs(q: u64, n: usize, redundancy: usize, weight: usize) -> (u64, u64) {
 }
 
 impl<'a> Columns<'a> {
-    fn new(check: &'a Matrix) -> Columns<'a> {
+    pub(super) fn new(check: &'a Matrix) -> Columns<'a> {
         let reduced = check.reduced().matrix;
         let even = check.field().is_binary() && {
             let ones = Matrix::from_fn(check.field(), 1, check.columns(), |_, _| 1);

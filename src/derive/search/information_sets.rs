@@ -98,7 +98,7 @@ pub(super) fn cost_of_sets(
     if k == 0 || k >= n {
         return u64::MAX;
     }
-    let whole = n / k;
+    let whole = (n / k).min(MOST_SETS);
     let mut fresh = vec![k; whole];
     if n % k > 0 {
         fresh.push(n % k);

@@ -39,7 +39,7 @@ pub fn macwilliams(counts: &[BigUint], q: u64, n: usize, k: usize) -> Option<Cou
 }
 
 /// The work units of [`macwilliams`].
-pub(super) fn cost_of_transform(q: u64, n: usize) -> u64 {
+pub fn cost_of_transform(q: u64, n: usize) -> u64 {
     let n = n as u64;
     let limbs = n.saturating_mul(u64::from(q.ilog2()) + 1) / 64;
     product(&[n, n, 20 + limbs])

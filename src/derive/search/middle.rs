@@ -10,18 +10,14 @@ use rayon::prelude::*;
 use super::Budget;
 use super::LightWord;
 use super::arithmetic::{choose, power, product};
-use super::columns::{Columns, Look};
+use super::columns::Look;
 use super::keys::Keys;
 use super::marks::Marks;
-use crate::algebra::Element;
+use super::sums::{Kind, Middle, Pass, passes};
 
 /// Work units for making a sum, and for marking or looking up a sum as well.
 const UNITS_A_SUM: u64 = 2;
 const UNITS_A_MARK: u64 = 10;
-/// Sums for which a pass is meant, and the most for which it has marks enough.
-/// Few in tests, so that those have several passes.
-const SUMS_A_PASS: u64 = if cfg!(test) { 1 << 5 } else { 1 << 23 };
-const MOST_SUMS_A_PASS: u64 = if cfg!(test) { 1 << 7 } else { 1 << 25 };
 /// How many suspects are kept before they are looked at.
 const MOST_SUSPECTS: usize = 1 << 22;
 /// Passes that are made side by side.
@@ -30,40 +26,6 @@ const PASSES_AT_ONCE: usize = 4;
 const SUMS_AT_ONCE: u64 = 1 << 22;
 /// Keys that are traced back to their columns at a time.
 const TRACED_AT_ONCE: usize = 64;
-
-/// The scaled columns of a check matrix as keys.
-pub(super) struct Middle<'a, K: Keys> {
-    columns: &'a Columns<'a>,
-    keys: K,
-    scalars: usize,
-    /// The key of each multiple of each column: column c times s + 1 at c · (q − 1) + s.
-    scaled: Vec<K::Key>,
-}
-
-/// Combinations of so many columns, the last one's scalar fixed to 1 if `normed`.
-#[derive(Clone, Copy)]
-struct Kind {
-    size: usize,
-    normed: bool,
-}
-
-/// One of several passes over all combinations: those whose keys have its number as lowest bits.
-/// Given all but one column of a combination, that tells which ones can be the last.
-struct Pass<Key> {
-    number: usize,
-    /// By lowest bits, the multiples and their keys; a single list when there is one pass.
-    lists: std::sync::Arc<Vec<Vec<(usize, Key)>>>,
-}
-
-/// How many passes so many sums of columns take, each of n having so many multiples: a power of
-/// two, large enough for the table of marks, and not so large that few columns are left to each.
-fn passes(sums: u64, multiples: u64) -> u64 {
-    let wanted = sums.div_ceil(SUMS_A_PASS).min(multiples / 8);
-    wanted
-        .max(sums.div_ceil(MOST_SUMS_A_PASS))
-        .clamp(1, 1 << 40)
-        .next_power_of_two()
-}
 
 /// The most work units for weight `weight` among n columns with `redundancy` rows.
 pub(super) fn cost_of_middle(q: u64, n: usize, redundancy: usize, weight: usize) -> u64 {
@@ -105,23 +67,7 @@ pub(super) fn likely_cost(q: u64, n: usize, redundancy: usize, weight: usize) ->
     }
 }
 
-impl<'a, K: Keys> Middle<'a, K> {
-    pub(super) fn new(columns: &'a Columns<'a>, keys: K) -> Middle<'a, K> {
-        let scalars = columns.arithmetic.order as usize - 1;
-        let scaled = columns
-            .columns
-            .iter()
-            .flat_map(|column| (1..=scalars).map(move |scalar| (column, scalar as Element)))
-            .map(|(column, scalar)| keys.key(&columns.arithmetic.scaled(scalar, column)))
-            .collect();
-        Middle {
-            columns,
-            keys,
-            scalars,
-            scaled,
-        }
-    }
-
+impl<K: Keys> Middle<'_, K> {
     /// Looks for a word of this weight, 3 at least, there being no lighter one.
     pub(super) fn look(&self, weight: usize, budget: &Budget) -> Look {
         let small = Kind {
@@ -168,21 +114,6 @@ impl<'a, K: Keys> Middle<'a, K> {
             }
         }
         Look::None
-    }
-
-    /// So many passes, a power of two.
-    fn passes(&self, rounds: usize) -> Vec<Pass<K::Key>> {
-        let mut lists = vec![Vec::new(); rounds];
-        for (flat, &key) in self.scaled.iter().enumerate() {
-            lists[self.keys.low(key).unwrap_or(0) & (rounds - 1)].push((flat, key));
-        }
-        let lists = std::sync::Arc::new(lists);
-        (0..rounds)
-            .map(|number| Pass {
-                number,
-                lists: lists.clone(),
-            })
-            .collect()
     }
 
     /// Looks at one pass, with about so many sums to mark.
@@ -424,105 +355,5 @@ impl<'a, K: Keys> Middle<'a, K> {
         support.dedup();
         let disjoint = support.len() == one.len() + other.len();
         disjoint.then(|| self.columns.word_on(&support)).flatten()
-    }
-
-    /// How many combinations there are.
-    fn sums(&self, kind: Kind) -> u64 {
-        let free = kind.size - usize::from(kind.normed);
-        product(&[
-            choose(self.columns.columns.len(), kind.size),
-            power(self.scalars as u64, free),
-        ])
-    }
-
-    /// How many have `top` as their last column.
-    fn sums_with(&self, top: usize, kind: Kind) -> u64 {
-        let free = kind.size - usize::from(kind.normed);
-        product(&[choose(top, kind.size - 1), power(self.scalars as u64, free)])
-    }
-
-    /// Whether a key is one of the pass.
-    #[inline]
-    fn is_of(&self, pass: &Pass<K::Key>, key: K::Key) -> bool {
-        let mask = pass.lists.len() - 1;
-        let number = match self.keys.low(key) {
-            Some(low) => low,
-            None => self.keys.slot(key, 62) as usize >> 3,
-        };
-        (number ^ pass.number) & mask == 0
-    }
-
-    /// Every combination of the pass with `top` as its last column. The visitor gets the key, the multiples
-    /// but one, and that one, and says whether to go on.
-    fn each_sum(
-        &self,
-        pass: &Pass<K::Key>,
-        top: usize,
-        kind: Kind,
-        visit: &mut impl FnMut(K::Key, &[usize], usize) -> bool,
-    ) {
-        let first = top * self.scalars;
-        let mut stack = Vec::with_capacity(kind.size);
-        for flat in first..first + if kind.normed { 1 } else { self.scalars } {
-            let go_on = if kind.size == 1 {
-                let key = self.scaled[flat];
-                !self.is_of(pass, key) || visit(key, &stack, flat)
-            } else {
-                stack.push(flat);
-                let go_on = self.each_below(
-                    pass,
-                    top,
-                    kind.size - 1,
-                    self.scaled[flat],
-                    &mut stack,
-                    visit,
-                );
-                stack.pop();
-                go_on
-            };
-            if !go_on {
-                return;
-            }
-        }
-    }
-
-    fn each_below(
-        &self,
-        pass: &Pass<K::Key>,
-        limit: usize,
-        size: usize,
-        sum: K::Key,
-        stack: &mut Vec<usize>,
-        visit: &mut impl FnMut(K::Key, &[usize], usize) -> bool,
-    ) -> bool {
-        let end = limit * self.scalars;
-        if size == 1 {
-            let lists = pass.lists.as_slice();
-            let wanted = self
-                .keys
-                .low(sum)
-                .map_or(0, |low| (low ^ pass.number) & (lists.len() - 1));
-            if lists.len() == 1 {
-                let mut all = self.scaled[..end].iter().enumerate();
-                return all.all(|(flat, &key)| visit(self.keys.add(sum, key), stack, flat));
-            }
-            let mut some = lists[wanted].iter().take_while(|&&(flat, _)| flat < end);
-            return some.all(|&(flat, key)| {
-                let key = self.keys.add(sum, key);
-                !self.is_of(pass, key) || visit(key, stack, flat)
-            });
-        }
-        for column in size - 1..limit {
-            for flat in column * self.scalars..(column + 1) * self.scalars {
-                stack.push(flat);
-                let key = self.keys.add(sum, self.scaled[flat]);
-                let go_on = self.each_below(pass, column, size - 1, key, stack, visit);
-                stack.pop();
-                if !go_on {
-                    return false;
-                }
-            }
-        }
-        true
     }
 }

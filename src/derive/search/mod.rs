@@ -20,6 +20,7 @@ mod linear_program;
 mod macwilliams;
 mod marks;
 mod middle;
+mod sums;
 mod transform;
 mod wording;
 
@@ -35,7 +36,7 @@ pub use enumerate::{cost_of_words, minimum_by_words, weight_counts};
 pub use information_sets::{Raised, raise_lower_bound};
 pub use light_words::light_word;
 pub use linear_program::linear_programming;
-pub use macwilliams::{macwilliams, mds_weights};
+pub use macwilliams::{cost_of_transform, macwilliams, mds_weights};
 
 /// How many words there are of each weight: entry w counts those of weight w, 0 ≤ w ≤ n.
 pub type Counts = Vec<BigUint>;
