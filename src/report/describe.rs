@@ -5,7 +5,7 @@ use super::model::{
     StepReport, Weights, Witness,
 };
 use crate::code::{self, Code, Distance};
-use crate::derive::search::bounds;
+use crate::derive::search::{bounds, linear_programming};
 use crate::derive::{Effort, Session, properties, structure, support};
 use crate::evaluate::{CompiledCode, Evaluator};
 use crate::project::{Checked, View};
@@ -135,6 +135,7 @@ fn largest_distances(code: &Code, report: &mut CodeReport) {
     for (name, bound) in [
         ("johnson", bounds::johnson(q, n, k)),
         ("elias", bounds::elias(q, n, k)),
+        ("linear_programming", linear_programming(q, n, k)),
     ] {
         if let Some(bound) = bound {
             report.bounds.push(name, bound as u64);
