@@ -222,6 +222,9 @@ impl<'a> Session<'a> {
         let budget = self.budget(effort);
         let own = search::cost_of_words(q, k, n);
         let dual = search::cost_of_words(q, n - k, n);
+        if own.min(dual) > budget.left() {
+            return None;
+        }
         if own <= dual {
             let counts = search::weight_counts(code.generator_matrix(), &budget, self.progress)?;
             return Some(Weights {

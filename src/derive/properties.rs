@@ -2,7 +2,7 @@
 
 use super::{Effort, Judgement, Session, Verdict};
 use crate::algebra::Matrix;
-use crate::code::{Code, Space, information_positions, weight};
+use crate::code::{Code, Space, weight};
 use num_bigint::BigUint;
 
 /// The most multiplications that a property may cost.
@@ -127,8 +127,29 @@ fn perfect(session: &Session, code: &Code) -> Judgement {
     let cosets = BigUint::from(code.field().order()).pow(code.redundancy() as u32);
     Judgement::of(
         ball == cosets,
-        format!("a ball of radius {radius} holds q^(n-k) = {cosets} words"),
-        format!("a ball of radius {radius} holds {ball} words, q^(n-k) is {cosets}"),
+        format!(
+            "a ball of radius {radius} holds q^(n-k) = {} words",
+            short(&cosets)
+        ),
+        format!(
+            "a ball of radius {radius} holds {} words, q^(n-k) is {}",
+            short(&ball),
+            short(&cosets)
+        ),
+    )
+}
+
+/// A number with its digits, or roughly when it has more than a reader counts.
+fn short(number: &BigUint) -> String {
+    let digits = number.to_string();
+    if digits.len() <= 24 {
+        return digits;
+    }
+    format!(
+        "about {}.{} * 10^{}",
+        &digits[..1],
+        &digits[1..4],
+        digits.len() - 1
     )
 }
 
@@ -224,21 +245,22 @@ fn self_dual(session: &Session, code: &Code) -> Judgement {
 }
 
 fn complementary_dual(_session: &Session, code: &Code) -> Judgement {
-    let generator = code.generator_matrix();
-    let size = generator.rows();
-    if size
-        .saturating_mul(size)
-        .saturating_mul(generator.columns())
-        > WORK
-    {
+    // The code and its dual have one hull, so the smaller of the two matrices decides.
+    let by_checks = code.redundancy() < code.dimension();
+    let size = code.dimension().min(code.redundancy());
+    if size.saturating_mul(size).saturating_mul(code.length()) > WORK {
         return Judgement::undecided("the matrices are too large to multiply");
     }
-    let rank = generator.multiply(&generator.transpose()).rank();
+    let (matrix, name) = match by_checks {
+        true => (code.check_matrix(), "H"),
+        false => (code.generator_matrix(), "G"),
+    };
+    let rank = matrix.multiply(&matrix.transpose()).rank();
     Judgement::of(
         rank == size,
-        "G times its transpose is invertible (Massey, 1992)",
+        format!("{name} times its transpose is invertible (Massey, 1992)"),
         format!(
-            "G times its transpose has rank {rank}, not k = {size}: the code meets its dual in dimension {}",
+            "{name} times its transpose has rank {rank}, not {size}: the code meets its dual in dimension {}",
             size - rank
         ),
     )
@@ -279,6 +301,16 @@ pub fn is_cyclic(session: &Session, code: &Code) -> Judgement {
 fn divisible(session: &Session, code: &Code, by: usize) -> Judgement {
     let weights = session.weights_by(code, Effort::Small);
     let Some(weights) = weights else {
+        let distance = session.distance_by(code, Effort::Theorems);
+        if let Some(d) = distance.exact().filter(|d| d % by != 0) {
+            return Judgement::fails(format!("words of weight d = {d} occur"))
+                .witness(distance.witness);
+        }
+        if !affordable(code) {
+            return Judgement::undecided(
+                "the weights are not known, and a generator matrix is too large to build",
+            );
+        }
         let divisor = divisor(code);
         if divisor % by == 0 {
             return Judgement::holds(format!(
@@ -331,13 +363,18 @@ fn doubly_even(session: &Session, code: &Code) -> Judgement {
     divisible(session, code, 4)
 }
 
+/// Whether a generator matrix is small enough to be built for a question on the side.
+fn affordable(code: &Code) -> bool {
+    code.dimension().saturating_mul(code.length()) <= 1 << 26
+}
+
 /// A number that surely divides every weight: 2 or 4 for binary codes whose generators show it,
 /// otherwise 1. For GF(2): all rows even, or all divisible by 4 and orthogonal to each other
 /// (MacWilliams and Sloane, 1977, ch. 1 §8 problem 38). For GF(3), a self-orthogonal code's weights are
 /// divisible by 3.
 pub fn divisor(code: &Code) -> usize {
     let order = code.field().order();
-    if order > 3 || code.dimension().saturating_mul(code.length()) > 1 << 26 {
+    if order > 3 || !affordable(code) {
         return 1;
     }
     let generator = code.generator_matrix();
@@ -356,19 +393,32 @@ pub fn divisor(code: &Code) -> usize {
 
 fn systematic(_session: &Session, code: &Code) -> Judgement {
     let (n, k) = (code.length(), code.dimension());
-    let informative =
-        |positions: Vec<usize>| code.generator_matrix().select_columns(&positions).rank() == k;
     if let Space::Cyclic(_) = code.space() {
         return Judgement::holds(
             "the first k positions of a cyclic code are free to carry data, the checks come last",
         );
     }
-    if information_positions(code).iter().copied().eq(0..k) || informative((0..k).collect()) {
+    // Positions carry the data freely when the columns of a check matrix at the others are
+    // independent, or their own columns of a generator matrix are; the smaller matrix decides.
+    let free = |data: std::ops::Range<usize>, checks: std::ops::Range<usize>| {
+        if n - k <= k {
+            code.check_matrix()
+                .select_columns(&checks.collect::<Vec<usize>>())
+                .rank()
+                == n - k
+        } else {
+            code.generator_matrix()
+                .select_columns(&data.collect::<Vec<usize>>())
+                .rank()
+                == k
+        }
+    };
+    if free(0..k, k..n) {
         return Judgement::holds(
             "the first k positions are free to carry data, the checks come last",
         );
     }
-    if informative((n - k..n).collect()) {
+    if free(n - k..n, 0..n - k) {
         return Judgement::holds(
             "the last k positions are free to carry data, the checks come first",
         );
@@ -396,6 +446,9 @@ fn equidistant(session: &Session, code: &Code) -> Judgement {
 }
 
 fn projective(_session: &Session, code: &Code) -> Judgement {
+    if !affordable(code) {
+        return Judgement::undecided("a generator matrix is too large to build");
+    }
     let field = code.field();
     let generator = code.generator_matrix();
     let mut seen = std::collections::HashMap::new();

@@ -36,7 +36,11 @@ impl Evaluator<'_> {
             return Err(no_such_order(&order, order_span));
         };
         match &literal.modulus {
-            None => Field::conway(p, m).map_err(|error| self.refused(&error, span, "x")),
+            None => {
+                let field = Field::conway(p, m).map_err(|error| self.refused(&error, span, "x"))?;
+                self.remark_unstated(&field, span);
+                Ok(field)
+            }
             Some(Modulus::Relation {
                 symbol,
                 left,
@@ -59,6 +63,36 @@ impl Evaluator<'_> {
                 self.with_modulus(p, m, &modulus, expression.span, false, "x")
             }
         }
+    }
+
+    /// Says which modulus is assumed, where another choice was possible: GF(p) has none, and GF(4)
+    /// only one.
+    fn remark_unstated(&self, field: &Field, span: Span) {
+        if field.degree() == 1 || field.order() == 4 || self.sources.get(span.source).library {
+            return;
+        }
+        let degree = field.degree() as usize;
+        let symbol = field.symbol();
+        let prime = field.characteristic();
+        let right: Vec<u32> = field.modulus()[..degree]
+            .iter()
+            .map(|&coefficient| (prime - coefficient) % prime)
+            .collect();
+        let right = crate::algebra::format_polynomial(&right, symbol);
+        self.report(
+            Finding::new(
+                catalogue::UNSTATED_MODULUS,
+                span,
+                format!(
+                    "the modulus of {field} is not stated, so the Conway polynomial is assumed"
+                ),
+            )
+            .label("other moduli give other matrices")
+            .help(format!(
+                "write `{} where {symbol}^{degree} = {right}`",
+                self.text(span)
+            )),
+        );
     }
 
     fn polynomial(&self, expression: &Expression, scope: &Scope) -> Outcome<Polynomial> {

@@ -4,7 +4,7 @@ use super::model::{
     CodeReport, DistanceReport, Ground, Interval, Measure, PropertyReport, RequirementReport, Side,
     StepReport, Weights, Witness,
 };
-use crate::code::{self, Code, Distance};
+use crate::code::{self, Code, Distance, Space};
 use crate::derive::search::{bounds, linear_programming};
 use crate::derive::{Effort, Session, properties, structure, support};
 use crate::evaluate::{CompiledCode, Evaluator};
@@ -145,7 +145,7 @@ fn largest_distances(code: &Code, report: &mut CodeReport) {
 }
 
 fn measures(code: &Code, report: &mut CodeReport) {
-    let Some(check) = code.check_matrix_as_built() else {
+    let Space::Check(check) = code.space() else {
         return;
     };
     if check.rows().saturating_mul(check.columns()) > ENTRIES {
