@@ -14,4 +14,6 @@ pub const LIBRARY: &[(&str, &str)] = library![
     "cyclic.coset",
     "classics.coset",
     "memory.coset",
+    "standards/crc.coset",
+    "standards/reed_solomon.coset",
 ];
