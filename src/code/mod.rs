@@ -68,6 +68,19 @@ pub struct Origin {
     pub rules: Arc<dyn Rules>,
     /// Conventions that were assumed or stated on the way, in plain words.
     pub assumptions: Vec<String>,
+    /// What was assumed because the spec leaves it open, if anything.
+    pub unstated: Option<Unstated>,
+}
+
+/// A convention that a spec leaves open.
+#[derive(Clone, PartialEq, Eq, Debug)]
+pub struct Unstated {
+    /// Which kind of finding it is where a file depends on it.
+    pub code: crate::finding::Code,
+    /// What is assumed.
+    pub says: String,
+    /// What to write to state it.
+    pub help: String,
 }
 
 /// What a construction or step hands back: a space and what follows from the way it was made.
@@ -86,6 +99,8 @@ pub struct Made {
     pub rules: Arc<dyn Rules>,
     /// Conventions assumed or stated.
     pub assumptions: Vec<String>,
+    /// What was assumed because the spec leaves it open, if anything.
+    pub unstated: Option<Unstated>,
 }
 
 impl Made {
@@ -117,6 +132,7 @@ impl Made {
             parents: Vec::new(),
             rules: Arc::new(NoRules),
             assumptions: Vec::new(),
+            unstated: None,
         }
     }
 
@@ -169,6 +185,7 @@ impl Code {
                 parents: made.parents,
                 rules: made.rules,
                 assumptions: made.assumptions,
+                unstated: made.unstated,
             }),
         }
     }
@@ -184,6 +201,7 @@ impl Code {
                 parents: vec![self.clone()],
                 rules: Arc::new(SameCode),
                 assumptions: Vec::new(),
+                unstated: None,
             }),
         }
     }
@@ -321,6 +339,18 @@ impl Code {
     pub fn assumptions(&self) -> Vec<String> {
         let mut found = Vec::new();
         self.collect_assumptions(&mut found);
+        found
+    }
+
+    /// What was assumed on the way to this code because the spec leaves it open, each once.
+    pub fn unstated(&self) -> Vec<Unstated> {
+        let mut found: Vec<Unstated> = Vec::new();
+        let earlier = self.origin.parents.iter().flat_map(Code::unstated);
+        for unstated in earlier.chain(self.origin.unstated.clone()) {
+            if !found.contains(&unstated) {
+                found.push(unstated);
+            }
+        }
         found
     }
 

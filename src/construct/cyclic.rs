@@ -2,7 +2,7 @@
 
 use super::{Construction, cyclic_bounds};
 use crate::algebra::{Field, RootError, generator_from_roots};
-use crate::code::{Bound, Code, Cyclic, Knowledge, Made, Rules, Space, lower};
+use crate::code::{Bound, Code, Cyclic, Knowledge, Made, Rules, Space, Unstated, lower};
 use crate::finding::{Found, catalogue};
 use crate::value::{CODE_LENGTH, Call, Value, needed, optional};
 use num_bigint::BigInt;
@@ -64,12 +64,24 @@ fn by_roots(call: &Call, field: &Field, length: usize) -> Found<Made> {
         .map_err(|error| refused(call, field, length, &error))?;
     let cyclic = Cyclic::new(field, length, found.generator.coefficients().to_vec())
         .expect("a product of minimal polynomials of n-th roots of unity divides x^n - 1");
-    Ok(made(field, length, cyclic)
+    let unstated = found.convention.is_assumed().then(|| Unstated {
+        code: catalogue::UNSTATED_ROOT_FIELD,
+        says: format!(
+            "the field in which the roots are named is not stated; assumed: {}",
+            found.convention
+        ),
+        help:
+            "state it: `field roots = GF(…) where …`, and `cyclic(length: …, roots: …, in: roots)`"
+                .to_string(),
+    });
+    let mut made = made(field, length, cyclic)
+        .assuming(found.convention.to_string())
         .rules(ByRoots {
             length,
             roots: found.exponents,
-        })
-        .assuming(found.convention.to_string()))
+        });
+    made.unstated = unstated;
+    Ok(made)
 }
 
 fn made(field: &Field, length: usize, cyclic: Cyclic) -> Made {

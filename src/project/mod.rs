@@ -3,14 +3,15 @@
 //! In: texts and a loader. Out: a [`View`] on everything that is known, handed to whoever asked,
 //! and the findings. This is the whole compiler in one call; the rooms below only show it.
 
-use crate::code::Distance;
+use crate::code::{Distance, Space};
 use crate::derive::search::Progress;
-use crate::derive::{Effort, Session, SessionMeasures};
+use crate::derive::{Effort, Session, SessionMeasures, structure};
 use crate::evaluate::{self, CompiledCode, Evaluator};
-use crate::finding::{Class, Finding};
+use crate::finding::{Class, Finding, catalogue};
 use crate::graph::{self, NodeKind, Program};
 use crate::require::{self, Court, Verdicts};
 use crate::source::{Loader, SourceId, Sources};
+use crate::syntax::tree::DeclarationKind;
 use petgraph::graph::NodeIndex;
 
 /// What a run may spend, and what it looks at.
@@ -105,11 +106,13 @@ pub fn run<T>(
             continue;
         }
         for compiled in evaluator.compile(node) {
+            findings.extend(redundant_checks(&compiled));
             let verdicts = court.judge(&compiled);
             findings.extend(verdicts.findings.iter().cloned());
             codes.push(Checked { compiled, verdicts });
         }
     }
+    findings.extend(unstated_conventions(&program, &evaluator));
     findings.extend(evaluator.take_findings());
     look(View {
         sources: &sources,
@@ -120,6 +123,65 @@ pub fn run<T>(
         findings,
         request,
     })
+}
+
+/// The most entries of a matrix in which dependent rows are looked for.
+const ENTRIES: usize = 1 << 22;
+
+/// A remark on a given check matrix whose rows are dependent.
+fn redundant_checks(compiled: &CompiledCode) -> Option<Finding> {
+    let start = compiled.code.trail().into_iter().next()?;
+    let start = start.unnamed();
+    let Space::Check(matrix) = start.space() else {
+        return None;
+    };
+    let (rows, rank) = (matrix.rows(), start.redundancy());
+    if rows == rank || start.origin().span.source != compiled.span.source {
+        return None;
+    }
+    let message = format!(
+        "{}: the check matrix has {rows} rows of rank {rank}, so k is {} and not {}",
+        compiled.title(),
+        start.dimension(),
+        start.length() as i64 - rows as i64
+    );
+    let dependent = (rows * matrix.columns() <= ENTRIES)
+        .then(|| structure::dependent_rows(matrix))
+        .flatten()
+        .filter(|rows| rows.len() <= 16);
+    let label = dependent.map_or(String::new(), |rows| {
+        let rows: Vec<String> = rows.iter().map(usize::to_string).collect();
+        format!("rows {} are dependent", rows.join(", "))
+    });
+    let finding =
+        Finding::new(catalogue::REDUNDANT_CHECKS, start.origin().span, message).label(label);
+    Some(finding.help("say `require full rank` where an encoder or a rate depends on it"))
+}
+
+/// Remarks on what is delivered and depends on a convention that the spec leaves open.
+fn unstated_conventions(program: &Program, evaluator: &Evaluator) -> Vec<Finding> {
+    let mut found = Vec::new();
+    for (at, file) in program
+        .files
+        .iter()
+        .enumerate()
+        .filter(|(_, file)| file.root)
+    {
+        for declaration in &file.tree.declarations {
+            let DeclarationKind::Deliver(deliver) = &declaration.kind else {
+                continue;
+            };
+            let Ok(compiled) = evaluator.code_named(&deliver.code, at) else {
+                continue;
+            };
+            for unstated in compiled.code.unstated() {
+                let message = format!("{}: {}", compiled.title(), unstated.says);
+                let finding = Finding::new(unstated.code, deliver.code.span, message);
+                found.push(finding.help(unstated.help));
+            }
+        }
+    }
+    found
 }
 
 /// The declarations of the files asked for, in their order.
@@ -143,16 +205,10 @@ pub fn class(findings: &[Finding]) -> Class {
 }
 
 impl View<'_> {
-    /// What is known of a code's distance once its clauses are judged: no harder look than they
-    /// took, and a quick one where nothing was asked.
+    /// What is known of a code's distance after a quick look, or the longer one that its clauses
+    /// took.
     pub fn distance(&self, checked: &Checked) -> Distance {
-        let asked = !checked.verdicts.clauses.is_empty();
-        let effort = if asked {
-            Effort::Theorems
-        } else {
-            Effort::Small
-        };
-        self.session.distance_by(&checked.compiled.code, effort)
+        self.session.distance_by(&checked.compiled.code, Effort::Small)
     }
 
     /// A code's parameters as text: `[72, 64, 4]`.
