@@ -28,6 +28,9 @@ const SMALL_WORK: u64 = 1 << 27;
 /// The most entries of a generator matrix that is built for a search.
 const ENTRIES: usize = 1 << 28;
 
+/// The most entries of a check matrix that a search works on.
+const CHECK_ENTRIES: usize = 1 << 28;
+
 /// Derives what is asked for and remembers it, for one run.
 pub struct Session<'a> {
     seconds: f64,
@@ -156,6 +159,10 @@ impl<'a> Session<'a> {
     }
 
     fn search(&self, code: &Code, distance: &mut Distance, effort: Effort) {
+        // Matrices beyond this are kept sparse, and the search would make them dense.
+        if code.redundancy().saturating_mul(code.length()) > CHECK_ENTRIES {
+            return;
+        }
         let budget = self.budget(effort);
         let divisor = properties::divisor(code);
         // A long code of high rate has a generator matrix that is all but dense and of no use.
