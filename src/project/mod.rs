@@ -208,7 +208,8 @@ impl View<'_> {
     /// What is known of a code's distance after a quick look, or the longer one that its clauses
     /// took.
     pub fn distance(&self, checked: &Checked) -> Distance {
-        self.session.distance_by(&checked.compiled.code, Effort::Small)
+        self.session
+            .distance_by(&checked.compiled.code, Effort::Small)
     }
 
     /// A code's parameters as text: `[72, 64, 4]`.
