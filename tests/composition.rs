@@ -51,9 +51,9 @@ fn random_rows(
 /// The longest length whose whole space can still be listed.
 fn longest(field: &PlainField) -> usize {
     (1..15)
-        .take_while(|&n| u64::from(field.order).pow(n) <= MOST)
+        .take_while(|&n| field.lists(n, MOST))
         .last()
-        .unwrap_or(1) as usize
+        .unwrap_or(1)
 }
 
 fn base(random: &mut ChaCha8Rng, field: &PlainField) -> Sample {
@@ -155,7 +155,7 @@ fn step(random: &mut ChaCha8Rng, sample: Sample) -> Sample {
                 },
             )
         }
-        3 if u64::from(field.order).pow(length as u32) <= MOST => {
+        3 if field.lists(length, MOST) => {
             let rows: Vec<Word> = words.list.iter().cloned().collect();
             ("dual".to_string(), dual(&field, length, &rows))
         }
@@ -179,13 +179,8 @@ fn step(random: &mut ChaCha8Rng, sample: Sample) -> Sample {
         6 => {
             let mut order: Vec<usize> = (0..length).collect();
             order.shuffle(random);
-            let text = format!(
-                "permute({})",
-                shown(&order)
-                    .replace(['{', '}'], "|")
-                    .replacen('|', "[", 1)
-                    .replacen('|', "]", 1)
-            );
+            let listed: Vec<String> = order.iter().map(usize::to_string).collect();
+            let text = format!("permute([{}])", listed.join(", "));
             (
                 text,
                 each(words, length, &|word| {
@@ -271,9 +266,7 @@ fn step(random: &mut ChaCha8Rng, sample: Sample) -> Sample {
 }
 
 fn check(sample: &Sample, first: &PlainField) {
-    let spec = format!("code sample = ({}) over {}\n", sample.text, first.text)
-        .replace("code sample = (", "code sample = ");
-    let spec = within(&spec, &sample.text, first);
+    let spec = written(&sample.text, first);
     with_spec(&spec, |view| {
         let messages: Vec<&String> = view
             .findings
@@ -336,7 +329,7 @@ fn check(sample: &Sample, first: &PlainField) {
 }
 
 /// The sample's text as a spec: its first field is stated behind the construction.
-fn within(_draft: &str, text: &str, first: &PlainField) -> String {
+fn written(text: &str, first: &PlainField) -> String {
     let (start, steps) = match text.split_once(" then ") {
         Some((start, steps)) => (start, format!(" then {steps}")),
         None => (text, String::new()),

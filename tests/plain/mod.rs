@@ -46,6 +46,13 @@ impl PlainField {
         PlainField::new(self.p, &[0, 1])
     }
 
+    /// Whether the whole space of this length has at most so many words.
+    pub fn lists(&self, length: usize, most: u64) -> bool {
+        u64::from(self.order)
+            .checked_pow(length as u32)
+            .is_some_and(|count| count <= most)
+    }
+
     pub fn digits(&self, element: u32) -> Vec<u32> {
         (0..self.degree as u32)
             .map(|at| element / self.p.pow(at) % self.p)
@@ -231,9 +238,7 @@ pub fn property(field: &PlainField, words: &Words, name: &str) -> Option<bool> {
             };
             Some(distinct(0, k) || distinct(n - k, n))
         }
-        "dual_containing" | "complementary_dual"
-            if u64::from(field.order).pow(n as u32) <= 20_000 =>
-        {
+        "dual_containing" | "complementary_dual" if field.lists(n, 20_000) => {
             let rows: Vec<Word> = words.list.iter().cloned().collect();
             let orthogonal = dual(field, n, &rows);
             let shared = orthogonal.list.intersection(&words.list).count();
