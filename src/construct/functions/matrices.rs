@@ -30,7 +30,7 @@ pub const FUNCTIONS: &[Function] = &[
         ],
         says: "A matrix of zeros.",
         theory: "",
-        example: "field bit = GF(2)\ncode tide over bit = check(blocks | identity(2) zeros(2, 1) ones(2, 1) |)\n  is [4, 2, 2]\n",
+        example: "field bit = GF(2)\ncode tide over bit = check(blocks | identity(2) zeros(2, 1) ones(2, 1) |)\n  is [4, 2, 1]\n",
         run: |call| {
             let (rows, columns) = (call.size("rows", 0, SIZE)?, call.size("columns", 0, SIZE)?);
             build(call, rows, columns, |_, _| 0)
