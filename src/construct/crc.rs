@@ -2,7 +2,7 @@
 
 use super::{Construction, cyclic};
 use crate::algebra::{Field, Matrix};
-use crate::code::{Bound, Code, Knowledge, Made, Rules, Space, lower};
+use crate::code::{Bound, Code, Knowledge, Made, Rules, Space, lower, upper};
 use crate::finding::{Found, catalogue};
 use crate::value::{CODE_LENGTH, Call, needed};
 
@@ -47,25 +47,33 @@ fn run(call: &Call) -> Found<Made> {
         return Err(call.wrong("generator", catalogue::BAD_ROOTS, message));
     }
     let even = field.is_binary() && generator.iter().filter(|&&entry| entry != 0).count() % 2 == 0;
-    let matrix = remainders(field, length, &generator);
+    let (matrix, order) = remainders(field, length, &generator);
     Ok(Made::new(field.clone(), length, Space::Check(matrix))
         .dimension(length - redundancy)
         .rules(Crc {
             even,
             checks: redundancy,
+            order,
         })
         .assuming("position i of a word carries x^(n-1-i): highest power first, checks last"))
 }
 
-/// The remainder of x^(n−1−i) in column i, highest power in the first row: the identity comes last.
-fn remainders(field: &Field, length: usize, generator: &[u32]) -> Matrix {
+/// The remainder of x^(n−1−i) in column i, highest power in the first row: the identity comes
+/// last. With it the order of x, when it is less than n.
+fn remainders(field: &Field, length: usize, generator: &[u32]) -> (Matrix, Option<usize>) {
     let redundancy = generator.len() - 1;
     let mut matrix = Matrix::zero(field, redundancy, length);
     let mut power = vec![0; redundancy];
     if let Some(first) = power.first_mut() {
         *first = 1;
     }
+    let mut order = None;
     for position in (0..length).rev() {
+        let exponent = length - 1 - position;
+        let is_one = power.first() == Some(&1) && power[1..].iter().all(|&entry| entry == 0);
+        if exponent > 0 && order.is_none() && is_one {
+            order = Some(exponent);
+        }
         for (at, &coefficient) in power.iter().enumerate() {
             if coefficient != 0 {
                 matrix.set(redundancy - 1 - at, position, coefficient);
@@ -80,24 +88,42 @@ fn remainders(field: &Field, length: usize, generator: &[u32]) -> Matrix {
             }
         }
     }
-    matrix
+    (matrix, order)
 }
 
 struct Crc {
     even: bool,
     checks: usize,
+    /// The least e > 0 below the length with remainder 1 for x^e.
+    order: Option<usize>,
+}
+
+impl Crc {
+    /// x^e - 1 is a multiple of the generator, and fits into the length.
+    fn two_terms(&self, code: &Code) -> Option<Bound> {
+        let order = self.order.filter(|_| code.dimension() > 0)?;
+        let length = code.length();
+        let mut word = vec![0; length];
+        word[length - 1 - order] = 1;
+        word[length - 1] = code.field().neg(1);
+        let says = format!(
+            "x^{order} leaves the remainder 1, so two errors {order} positions apart go unseen; \
+             no length up to {order} has room for them"
+        );
+        Some(upper(2, "order of x", says, Some(word)))
+    }
 }
 
 impl Rules for Crc {
-    fn distance(&self, code: &Code, known: &dyn Knowledge) -> Vec<Bound> {
-        let _ = known;
-        if !self.even || self.checks == 0 || code.dimension() == 0 {
-            return Vec::new();
+    fn distance(&self, code: &Code, _known: &dyn Knowledge) -> Vec<Bound> {
+        let mut bounds: Vec<Bound> = self.two_terms(code).into_iter().collect();
+        if self.even && self.checks > 0 && code.dimension() > 0 {
+            bounds.push(lower(
+                2,
+                "even",
+                "the generator has the factor x + 1, so every weight is even",
+            ));
         }
-        vec![lower(
-            2,
-            "even",
-            "the generator has the factor x + 1, so every weight is even",
-        )]
+        bounds
     }
 }

@@ -314,7 +314,11 @@ impl Evaluator<'_> {
             .to_usize()
             .is_none_or(|count| names.len() + count > length)
         {
-            let message = format!("these names cover more than the code's {length} positions");
+            let last = length.saturating_sub(names.len());
+            let message = format!(
+                "these names cover more than the code's {length} positions: {last} are left for `{}`, which names {count}",
+                group.name.text
+            );
             return Err(wrong(catalogue::BAD_BITS, span, message));
         }
         let step = if from <= to {

@@ -318,12 +318,13 @@ impl Evaluator<'_> {
                     span,
                 )))
             }
-            None => Err(self.nothing_to_pick(total, impossible, span)),
+            None => Err(self.nothing_to_pick(pick, total, impossible, span)),
         }
     }
 
     fn nothing_to_pick(
         &self,
+        pick: &Pick,
         total: usize,
         impossible: Option<Box<Finding>>,
         span: Span,
@@ -331,7 +332,13 @@ impl Evaluator<'_> {
         let mut finding = Finding::new(
             catalogue::EMPTY_CHOICE,
             span,
-            format!("none of the {total} candidates can be chosen"),
+            match &pick.condition {
+                Some(condition) if impossible.is_none() => format!(
+                    "none of the {total} candidates satisfies `{}`",
+                    self.text(condition.span)
+                ),
+                _ => format!("none of the {total} candidates can be chosen"),
+            },
         )
         .help("widen the domains, or weaken the condition after `where`");
         if let Some(reason) = impossible {

@@ -120,6 +120,17 @@ impl Court<'_> {
             }
             Verdict::Undecided => Judgement::undecided(format!("d lies in {shown}")),
         };
+        // What refutes a claim need not settle d; the author wants to know it where that is cheap.
+        let (distance, shown, judgement) =
+            if verdict == Verdict::Fails && distance.exact().is_none() {
+                let closer = self.session.distance_by(&compiled.code, Effort::Small);
+                let shown = interval(&closer);
+                let judgement =
+                    Judgement::fails(format!("d = {shown}")).witness(closer.witness.clone());
+                (closer, shown, judgement)
+            } else {
+                (distance, shown, judgement)
+            };
         let message = match verdict {
             Verdict::Fails => format!(
                 "{} is claimed to have d {}, but {}",
@@ -146,7 +157,12 @@ impl Court<'_> {
             .to_usize()
             .is_some_and(|wanted| distance.upper < wanted);
         if verdict == Verdict::Fails {
-            finding = finding.help(format!("write {shown} here if that is what is meant"));
+            let written = match (distance.exact(), too_low) {
+                (Some(exact), _) => exact.to_string(),
+                (None, true) => format!("<= {}", distance.upper),
+                (None, false) => format!(">= {}", distance.lower),
+            };
+            finding = finding.help(format!("write `{written}` here if that is what is meant"));
             match distance.witness.as_ref().filter(|_| too_low) {
                 Some(word) => {
                     let (positions, values) = support(word);

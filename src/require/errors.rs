@@ -1,6 +1,7 @@
 //! Random errors and losses: decided by the distance alone.
 
 use super::{Asked, Phrase, Ruling, interval};
+use crate::code::Side;
 use crate::derive::{Effort, Judgement, support};
 use crate::evaluate::Stop;
 
@@ -185,5 +186,11 @@ fn by_distance(
     }
     let mut ruling = Ruling::new(Judgement::fails(says).witness(distance.witness));
     ruling.needed = Some(needed);
+    // The generator of a CRC says up to which length the promise would have held.
+    ruling.help = distance
+        .grounds
+        .iter()
+        .find(|bound| bound.side == Side::Upper && bound.rule == "order of x")
+        .map(|bound| bound.says.clone());
     ruling
 }

@@ -272,8 +272,12 @@ impl Court<'_> {
             ),
         };
         let message = format!("{}: `{}` {verb}", compiled.title(), requirement.text);
-        let mut finding =
-            Finding::new(code, requirement.span, message).label(ruling.judgement.says.clone());
+        let mut label = ruling.judgement.says.clone();
+        if let (None, Some(word)) = (ruling.needed, &ruling.judgement.witness) {
+            let shown = name_places(compiled, word);
+            label = format!("{label}, as the word on {shown} shows");
+        }
+        let mut finding = Finding::new(code, requirement.span, message).label(label);
         finding.help = ruling.help.clone();
         if let Some(needed) = ruling.needed {
             finding.related.extend(self.blame(&compiled.code, needed));
@@ -299,8 +303,9 @@ impl Court<'_> {
                 self.session.distance_by(step, effort)
             })
             .collect();
-        let at =
-            (0..trail.len()).find(|&at| distances[at].upper < needed && distances[at].lower > 0)?;
+        let short = |at: usize| distances[at].upper < needed && distances[at].lower > 0;
+        // An early step may fall short and a later one make up for it: the last fall counts.
+        let at = (0..trail.len()).rev().take_while(|&at| short(at)).last()?;
         let span = trail[at].origin().span;
         let now = interval(&distances[at]);
         let message = if at == 0 {
@@ -312,6 +317,17 @@ impl Court<'_> {
         };
         Some(Related { message, span })
     }
+}
+
+/// The places of a word by name, the first dozen of them.
+fn name_places(compiled: &CompiledCode, word: &[u32]) -> String {
+    let (positions, _) = support(word);
+    let shown = &positions[..positions.len().min(12)];
+    let mut text = position_names(compiled.position_names.as_deref(), shown).join(", ");
+    if shown.len() < positions.len() {
+        text.push_str(", …");
+    }
+    text
 }
 
 /// A distance as text: `4`, or `4..6`.

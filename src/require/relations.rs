@@ -115,7 +115,7 @@ fn same_matrix(asked: &Asked) -> Result<Ruling, Stop> {
     Ok(Ruling::new(match differing {
         None => Judgement::holds(format!("all {} columns agree", own.columns())),
         Some(at) => Judgement::fails(format!(
-            "the columns of {} differ: {:?} here, {:?} there",
+            "the columns of {} differ: {:?} in this code, {:?} in the given matrix",
             asked.named(&[at]),
             own.column(at),
             given.column(at)

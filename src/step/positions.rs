@@ -2,7 +2,7 @@
 
 use crate::algebra::Matrix;
 use crate::code::{Code, Space};
-use crate::finding::{Found, catalogue};
+use crate::finding::{Finding, Found, catalogue};
 use crate::value::{Call, Parameter, optional};
 
 /// The parameters `first`, `last`, `at` of steps that take positions.
@@ -58,11 +58,13 @@ pub fn positions(code: &Code, call: &Call) -> Found<Vec<usize>> {
             choose("at", at)?;
         }
     }
-    if !any {
-        let mut finding = call.trouble(
+    // A bare number says how many, not which; the two ends give different codes.
+    if !any || call.unnamed().is_some() {
+        let mut finding = Box::new(Finding::new(
             catalogue::BAD_POSITIONS,
+            call.unnamed().unwrap_or(call.span),
             format!("which positions `{}` means is not stated", call.name),
-        );
+        ));
         finding.help = Some(format!(
             "write `{0}(first: 3)`, `{0}(last: 3)` or `{0}(at: {{0, 4..9}})`",
             call.name

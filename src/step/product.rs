@@ -51,7 +51,12 @@ pub(super) fn same_field(code: &Code, other: &Code, call: &Call, name: &str) -> 
             code.field(),
             other.field()
         );
-        return Err(call.wrong(name, catalogue::FIELD_MISMATCH, message));
+        let mut finding = call.wrong(name, catalogue::FIELD_MISMATCH, message);
+        finding.help = Some(format!(
+            "both have to be over one field: build the other over {}, or take this one to its prime field with `then image`",
+            code.field()
+        ));
+        return Err(finding);
     }
     Ok(())
 }

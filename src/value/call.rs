@@ -104,6 +104,7 @@ pub struct Call<'a> {
     pub file: &'a str,
     parameters: &'a [Parameter],
     bound: Vec<Option<(Value, Span)>>,
+    unnamed: Option<Span>,
 }
 
 impl<'a> Call<'a> {
@@ -125,6 +126,10 @@ impl<'a> Call<'a> {
             .iter()
             .map(|parameter| parameter.optional)
             .collect();
+        let unnamed = given
+            .iter()
+            .find(|argument| argument.name.is_none())
+            .map(|argument| argument.span);
         let bound = bind_arguments(name, span, &names, &optional, given)?;
         Ok(Call {
             name,
@@ -134,7 +139,13 @@ impl<'a> Call<'a> {
             file,
             parameters,
             bound,
+            unnamed,
         })
+    }
+
+    /// Where the first argument stands that was given by place and not by name, if there is one.
+    pub fn unnamed(&self) -> Option<Span> {
+        self.unnamed
     }
 
     fn index(&self, name: &str) -> usize {
