@@ -40,7 +40,7 @@ pub fn is_prime(n: u64) -> bool {
         return false;
     }
     for prime in SMALL_PRIMES {
-        if n % prime == 0 {
+        if n.is_multiple_of(prime) {
             return n == prime;
         }
     }
@@ -70,7 +70,7 @@ pub fn factor_u64(mut n: u64) -> Vec<(u64, u32)> {
     }
     let mut divisor = 2;
     while divisor < 2048 && divisor * divisor <= n {
-        while n % divisor == 0 {
+        while n.is_multiple_of(divisor) {
             primes.push(divisor);
             n /= divisor;
         }

@@ -182,6 +182,6 @@ fn girth(code: &Code) -> Result<Measured, Trouble> {
             catalogue::BAD_NUMBER,
             "the check matrix has no cycle, so it has no girth",
         )),
-        Err(()) => Err(unknown("the girth of so large a matrix")),
+        Err(structure::TooLarge) => Err(unknown("the girth of so large a matrix")),
     }
 }

@@ -312,7 +312,7 @@ fn divisible(session: &Session, code: &Code, by: usize) -> Judgement {
             );
         }
         let divisor = divisor(code);
-        if divisor % by == 0 {
+        if divisor.is_multiple_of(by) {
             return Judgement::holds(format!(
                 "all rows of a generator matrix have weights divisible by {by}, and so have their sums"
             ));
@@ -320,7 +320,7 @@ fn divisible(session: &Session, code: &Code, by: usize) -> Judgement {
         let generator = code.generator_matrix();
         let odd = (0..generator.rows())
             .map(|row| generator.row(row))
-            .find(|row| weight(row) % by != 0);
+            .find(|row| !weight(row).is_multiple_of(by));
         return match odd {
             Some(word) => {
                 Judgement::fails(format!("a word has weight {}", weight(&word))).witness(Some(word))
@@ -347,7 +347,7 @@ fn skew_sum(code: &Code, by: usize) -> Judgement {
             .zip(generator.row(other))
             .map(|(&left, right)| field.add(left, right))
             .collect();
-        if weight(&sum) % by != 0 {
+        if !weight(&sum).is_multiple_of(by) {
             return Judgement::fails(format!("a word has weight {}", weight(&sum)))
                 .witness(Some(sum));
         }

@@ -31,9 +31,13 @@ pub fn column_weights(matrix: &Matrix) -> Vec<usize> {
     weights
 }
 
+/// A matrix is too large for a question to be answered.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+pub struct TooLarge;
+
 /// The length of the shortest cycle in the bipartite graph of rows and columns; `Ok(None)` when
 /// there is no cycle, `Err` when the matrix is too large.
-pub fn girth(matrix: &Matrix) -> Result<Option<usize>, ()> {
+pub fn girth(matrix: &Matrix) -> Result<Option<usize>, TooLarge> {
     let rows = matrix.rows();
     let mut neighbours: Vec<Vec<usize>> = vec![Vec::new(); rows + matrix.columns()];
     let mut edges = 0;
@@ -45,7 +49,7 @@ pub fn girth(matrix: &Matrix) -> Result<Option<usize>, ()> {
         }
     }
     if edges > EDGES || edges.saturating_mul(rows) > 1 << 32 {
-        return Err(());
+        return Err(TooLarge);
     }
     let mut best: Option<usize> = None;
     // Every cycle passes through a row, so it is enough to start there.

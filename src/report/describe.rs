@@ -123,20 +123,16 @@ fn largest_distances(code: &Code, report: &mut CodeReport) {
     if k == 0 {
         return;
     }
-    let plain: [(&str, fn(u64, usize, usize) -> usize); 4] = [
-        ("singleton", bounds::singleton),
-        ("hamming", bounds::hamming),
-        ("plotkin", bounds::plotkin),
-        ("griesmer", bounds::griesmer),
-    ];
-    for (name, bound) in plain {
-        report.bounds.push(name, bound(q, n, k) as u64);
-    }
-    for (name, bound) in [
+    let largest = [
+        ("singleton", Some(bounds::singleton(q, n, k))),
+        ("hamming", Some(bounds::hamming(q, n, k))),
+        ("plotkin", Some(bounds::plotkin(q, n, k))),
+        ("griesmer", Some(bounds::griesmer(q, n, k))),
         ("johnson", bounds::johnson(q, n, k)),
         ("elias", bounds::elias(q, n, k)),
         ("linear_programming", linear_programming(q, n, k)),
-    ] {
+    ];
+    for (name, bound) in largest {
         if let Some(bound) = bound {
             report.bounds.push(name, bound as u64);
         }

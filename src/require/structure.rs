@@ -73,7 +73,9 @@ fn no_four_cycles(asked: &Asked) -> Result<Ruling, Stop> {
             Ok(Some(4)) => Judgement::fails("the girth is 4"),
             Ok(Some(girth)) => Judgement::holds(format!("the girth is {girth}")),
             Ok(None) => Judgement::holds("there is no cycle"),
-            Err(()) => Judgement::undecided("the matrix is too large to look for cycles"),
+            Err(structure::TooLarge) => {
+                Judgement::undecided("the matrix is too large to look for cycles")
+            }
         },
     ))
 }

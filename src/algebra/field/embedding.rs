@@ -22,7 +22,9 @@ impl Field {
     /// The embedding of `sub` into this field by the rule of [`crate::algebra::field::embedding`];
     /// `None` when it is no subfield.
     pub fn embedding_of(&self, sub: &Field) -> Option<Embedding> {
-        if self.characteristic() != sub.characteristic() || self.degree() % sub.degree() != 0 {
+        if self.characteristic() != sub.characteristic()
+            || !self.degree().is_multiple_of(sub.degree())
+        {
             return None;
         }
         let keeps_names = sub.degree() == 1 || sub == self;

@@ -138,7 +138,7 @@ impl Space {
             })
             .collect();
         let mut line = vec![0; q];
-        for start in (0..far.len()).filter(|start| start / place % q == 0) {
+        for start in (0..far.len()).filter(|start| (start / place).is_multiple_of(q)) {
             line[0] = start;
             for (entry, (low, high)) in line[1..].iter_mut().zip(&steps) {
                 *entry = high[start / self.low_size] * self.low_size + low[start % self.low_size];

@@ -104,7 +104,7 @@ pub fn mds_weights(n: usize, k: usize, q: u64) -> Option<Counts> {
         }
         ways = ways * BigInt::from(n - w) / BigInt::from(w + 1);
         sum *= &less;
-        if (w + 1 - d) % 2 == 0 {
+        if (w + 1 - d).is_multiple_of(2) {
             sum += &extra;
         } else {
             sum -= &extra;

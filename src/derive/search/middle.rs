@@ -52,7 +52,7 @@ pub(super) fn cost_of_middle(q: u64, n: usize, redundancy: usize, weight: usize)
 pub(super) fn likely_cost(q: u64, n: usize, redundancy: usize, weight: usize) -> u64 {
     let words = choose(n, weight) as f64 * ((q - 1) as f64).powi(weight as i32 - 1);
     let expected = words / (q as f64).powi(redundancy as i32);
-    let share = if weight % 2 == 0 {
+    let share = if weight.is_multiple_of(2) {
         expected.sqrt()
     } else {
         expected
@@ -60,7 +60,7 @@ pub(super) fn likely_cost(q: u64, n: usize, redundancy: usize, weight: usize) ->
     let small = product(&[choose(n, weight / 2), power(q - 1, weight / 2)]);
     let cost = (cost_of_middle(q, n, redundancy, weight) as f64 / share.max(1.0)) as u64;
     // With sets of two sizes, all of the smaller ones come first.
-    if weight % 2 == 0 {
+    if weight.is_multiple_of(2) {
         cost
     } else {
         cost.saturating_add(product(&[small, UNITS_A_MARK]))
@@ -85,7 +85,7 @@ impl<K: Keys> Middle<'_, K> {
         if let [pass] = passes.as_slice() {
             return self.pass(weight, pass, marked, budget);
         }
-        let all = if weight % 2 == 0 {
+        let all = if weight.is_multiple_of(2) {
             marked
         } else {
             marked.saturating_add(self.sums(large))
@@ -118,7 +118,7 @@ impl<K: Keys> Middle<'_, K> {
 
     /// Looks at one pass, with about so many sums to mark.
     fn pass(&self, weight: usize, pass: &Pass<K::Key>, marked: u64, budget: &Budget) -> Look {
-        if weight % 2 == 0 {
+        if weight.is_multiple_of(2) {
             self.equal_sums(weight / 2, pass, marked, budget)
         } else {
             self.meeting_sums(weight / 2, pass, marked, budget)
