@@ -11,7 +11,7 @@ use crate::finding::{Class, Finding, catalogue};
 use crate::graph::{self, NodeKind, Program};
 use crate::require::{self, Court, Verdicts};
 use crate::source::{Loader, SourceId, Sources};
-use crate::syntax::tree::DeclarationKind;
+use crate::syntax::tree::{Clause, ClauseKind, DeclarationKind};
 use petgraph::graph::NodeIndex;
 
 /// What a run may spend, and what it looks at.
@@ -106,7 +106,7 @@ pub fn run<T>(
             continue;
         }
         for compiled in evaluator.compile(node) {
-            findings.extend(redundant_checks(&compiled));
+            findings.extend(redundant_checks(&evaluator, &compiled));
             let verdicts = court.judge(&compiled);
             findings.extend(verdicts.findings.iter().cloned());
             codes.push(Checked { compiled, verdicts });
@@ -128,8 +128,15 @@ pub fn run<T>(
 /// The most entries of a matrix in which dependent rows are looked for.
 const ENTRIES: usize = 1 << 22;
 
-/// A remark on a given check matrix whose rows are dependent.
-fn redundant_checks(compiled: &CompiledCode) -> Option<Finding> {
+/// A remark on a given check matrix whose rows are dependent, unless a clause asks just that.
+fn redundant_checks(evaluator: &Evaluator, compiled: &CompiledCode) -> Option<Finding> {
+    let asked = |clause: &Clause| match &clause.kind {
+        ClauseKind::Requirement(requirement) => requirement.text == "full rank",
+        _ => false,
+    };
+    if evaluator.declaration_of(compiled).clauses.iter().any(asked) {
+        return None;
+    }
     let start = compiled.code.trail().into_iter().next()?;
     let start = start.unnamed();
     let Space::Check(matrix) = start.space() else {
