@@ -285,7 +285,8 @@ impl<'a> Session<'a> {
         let cosets = (code.field().order() as f64).powf(code.redundancy() as f64);
         let radius = if code.redundancy() == 0 {
             Some(0)
-        } else if cosets <= (1u64 << 24) as f64
+        } else if code.field().order() <= 256
+            && cosets <= (1u64 << 24) as f64
             && cosets * code.length() as f64 <= (1u64 << 32) as f64
         {
             search::covering_radius(code.check_matrix(), &self.budget(Effort::Full))

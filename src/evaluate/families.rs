@@ -14,7 +14,7 @@ use std::cmp::Ordering;
 use std::sync::Arc;
 
 /// The most vectors, points or monomials that a condition is asked about.
-const CANDIDATES: u64 = 1 << 24;
+const CANDIDATES: u64 = 1 << 20;
 
 impl Evaluator<'_> {
     fn family_field(&self, span: Span, scope: &Scope, what: &str) -> Outcome<Field> {
