@@ -5,6 +5,7 @@
 //! first, until both sides meet or the budget is gone. Every answer is remembered.
 
 pub mod measures;
+pub mod patterns;
 pub mod properties;
 pub mod search;
 pub mod structure;

@@ -6,6 +6,8 @@
 
 mod claims;
 mod errors;
+mod layout;
+mod patterns;
 mod phrases;
 mod relations;
 mod structure;
@@ -145,10 +147,11 @@ impl Court<'_> {
         for part in parts {
             if let PhrasePart::Operand(expression) = part {
                 let scope = compiled.scope.inside(&compiled.code);
-                operands.push((
-                    self.evaluator.evaluate(expression, &scope)?,
-                    expression.span,
-                ));
+                let value = match layout::operand(self.evaluator, compiled, expression) {
+                    Some(groups) => groups?,
+                    None => self.evaluator.evaluate(expression, &scope)?,
+                };
+                operands.push((value, expression.span));
             }
         }
         (phrase.decide)(&Asked {

@@ -1,6 +1,6 @@
 //! The phrases of the requirement vocabulary.
 
-use super::{Asked, Ruling, errors, relations, structure};
+use super::{Asked, Ruling, errors, patterns, relations, structure};
 use crate::evaluate::Stop;
 use crate::syntax::tree::PhrasePart;
 
@@ -16,9 +16,14 @@ pub struct Phrase {
 
 /// All phrases.
 pub fn phrases() -> impl Iterator<Item = &'static Phrase> {
-    [errors::PHRASES, structure::PHRASES, relations::PHRASES]
-        .into_iter()
-        .flatten()
+    [
+        errors::PHRASES,
+        patterns::PHRASES,
+        structure::PHRASES,
+        relations::PHRASES,
+    ]
+    .into_iter()
+    .flatten()
 }
 
 /// The pattern of a phrase as written.
