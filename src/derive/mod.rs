@@ -5,6 +5,8 @@
 //! first, until both sides meet or the budget is gone. Every answer is remembered.
 
 pub mod channel;
+pub mod form;
+pub mod locality;
 pub mod measures;
 pub mod patterns;
 pub mod properties;

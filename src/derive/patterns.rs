@@ -106,6 +106,11 @@ impl<'a> Basis<'a> {
         }
     }
 
+    /// The columns it takes from.
+    pub fn columns(&self) -> &'a Columns<'a> {
+        self.columns
+    }
+
     /// How many columns it holds.
     pub fn len(&self) -> usize {
         self.pivots.len()

@@ -7,22 +7,30 @@
 mod claims;
 mod errors;
 mod layout;
+mod limits;
+mod miscorrection;
+mod numbers;
 mod patterns;
 mod phrases;
 mod relations;
+mod storage;
 mod structure;
 
 pub use phrases::{Phrase, phrases};
 
 use crate::code::{Code, Distance};
 use crate::derive::{
-    Effort, Judgement, MEASURES, Session, SessionMeasures, Verdict, properties, support,
+    Effort, Judgement, MEASURES, Session, SessionMeasures, Verdict, channel::decimal, properties,
+    support,
 };
 use crate::evaluate::{CompiledCode, Evaluator, Stop, position_names};
 use crate::finding::{Code as FindingCode, Finding, Related, catalogue, near_names};
 use crate::source::Span;
-use crate::syntax::tree::{ClauseKind, Condition, Expression, PhrasePart, Requirement, Strength};
+use crate::syntax::tree::{
+    ClauseKind, Condition, Expression, ExpressionKind, PhrasePart, Requirement, Strength,
+};
 use crate::value::Value;
+use num_rational::BigRational;
 
 /// What kind of clause was judged.
 #[derive(Clone, Copy, PartialEq, Eq, Debug, serde::Serialize)]
@@ -115,6 +123,11 @@ impl Court<'_> {
             Err(Stop::Unsettled { name, lower, upper }) => Ruling::new(Judgement::undecided(
                 format!("{name} is only known to lie in {lower}..{upper}"),
             )),
+            Err(Stop::Enclosed { name, ends }) => Ruling::new(Judgement::undecided(format!(
+                "{name} is only known to lie between {} and {}",
+                decimal(&ends.0, false),
+                decimal(&ends.1, true)
+            ))),
         };
         if let Some(finding) = self.finding(compiled, requirement, &ruling) {
             verdicts.findings.push(finding);
@@ -206,11 +219,64 @@ impl Court<'_> {
                     )),
                 }))
             }
+            Err(stop @ Stop::Enclosed { .. }) => self.enclosed(compiled, expression, stop),
             Err(Stop::Finding(finding)) if finding.code == catalogue::CLAIM_UNDECIDED => {
                 Ok(Ruling::new(Judgement::undecided(finding.message)))
             }
             Err(stop) => Err(stop),
         }
+    }
+
+    /// A comparison of numbers that are only known to lie between two fractions: it stands when
+    /// all of one side lies on the right side of all of the other.
+    fn enclosed(
+        &self,
+        compiled: &CompiledCode,
+        expression: &Expression,
+        stop: Stop,
+    ) -> Result<Ruling, Stop> {
+        let ExpressionKind::Binary(operator, left, right) = &expression.kind else {
+            return Err(stop);
+        };
+        let (one, one_says) = self.ends(compiled, left)?;
+        let (other, other_says) = self.ends(compiled, right)?;
+        let Some(verdict) = numbers::compared(*operator, &one, &other) else {
+            return Err(stop);
+        };
+        let says = [one_says, other_says].into_iter().flatten().collect::<Vec<_>>();
+        Ok(Ruling::new(Judgement {
+            verdict,
+            says: says.join(" and "),
+            witness: None,
+        }))
+    }
+
+    /// A number, or the two it lies between, with the grounds if it is a figure.
+    fn ends(
+        &self,
+        compiled: &CompiledCode,
+        side: &Expression,
+    ) -> Result<(numbers::Ends, Option<String>), Stop> {
+        self.measures.last.borrow_mut().take();
+        let scope = compiled.scope.about(&compiled.code, Vec::new());
+        let ends = match self.evaluator.evaluate(side, &scope) {
+            Ok(Value::Integer(number)) => {
+                let number = BigRational::from_integer(number);
+                (number.clone(), number)
+            }
+            Ok(Value::Rational(number)) => (number.clone(), number),
+            Err(Stop::Enclosed { ends, .. }) => *ends,
+            Ok(other) => {
+                return Err(Stop::Finding(Box::new(Finding::new(
+                    catalogue::WRONG_TYPE,
+                    side.span,
+                    format!("a number is compared here, not {}", other.kind()),
+                ))));
+            }
+            Err(stop) => return Err(stop),
+        };
+        let grounds = self.measures.last.borrow_mut().take();
+        Ok((ends, grounds.map(|judgement| judgement.says)))
     }
 
     fn assumed(
@@ -225,7 +291,6 @@ impl Court<'_> {
 
     /// The two sides of a comparison as they came out: `row_weight is 38, not <= 36`.
     fn grounds(&self, compiled: &CompiledCode, expression: &Expression, holds: bool) -> String {
-        use crate::syntax::tree::ExpressionKind;
         let scope = compiled.scope.about(&compiled.code, Vec::new());
         if let ExpressionKind::Binary(_, left, right) = &expression.kind
             && let (Ok(one), Ok(other)) = (

@@ -1,6 +1,8 @@
 //! The phrases of the requirement vocabulary.
 
-use super::{Asked, Ruling, errors, patterns, relations, structure};
+use super::{
+    Asked, Ruling, errors, limits, miscorrection, patterns, relations, storage, structure,
+};
 use crate::evaluate::Stop;
 use crate::syntax::tree::PhrasePart;
 
@@ -19,7 +21,10 @@ pub fn phrases() -> impl Iterator<Item = &'static Phrase> {
     [
         errors::PHRASES,
         patterns::PHRASES,
+        miscorrection::PHRASES,
+        storage::PHRASES,
         structure::PHRASES,
+        limits::PHRASES,
         relations::PHRASES,
     ]
     .into_iter()

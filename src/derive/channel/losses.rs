@@ -7,12 +7,12 @@ use crate::code::Code;
 use crate::derive::patterns::{Basis, Columns};
 use crate::derive::{Effort, Session};
 use num_bigint::BigUint;
-use num_traits::Zero;
+use num_traits::{One, Zero};
 
 /// The most sets of columns that are gone through.
 const SETS: usize = 1 << 22;
 /// The longest code whose sets are bounded size by size.
-const LENGTH: usize = 1 << 12;
+const LENGTH: usize = 1 << 11;
 
 /// The probability that the lost symbols cannot be recovered.
 pub(super) fn loss(session: &Session, code: &Code, noise: &Noise) -> Figure {
@@ -96,29 +96,36 @@ fn bounds(session: &Session, code: &Code) -> (Sets, Sets) {
     let distance = session.distance_by(code, Effort::Full);
     let weights = session.weights_by(code, Effort::Full);
     let multiples = BigUint::from(code.field().order() - 1);
+    // For each weight w, how many place sets there are, times C(n - w, s - w).
+    let mut held: Sets = Vec::new();
     let (mut fewest, mut most): (Sets, Sets) = (Vec::new(), Vec::new());
+    let mut all = choose(n, distance.lower);
     for size in distance.lower..=n {
-        let all = choose(n, size);
+        if size > distance.lower {
+            all = all * (n - size + 1) / size;
+        }
         if size > checks {
             fewest.push((size, all.clone()));
-            most.push((size, all));
+            most.push((size, all.clone()));
             continue;
         }
-        let mut ceiling = all.clone();
-        if let Some(weights) = &weights {
-            let held: BigUint = weights
-                .counts
-                .range(1..=size)
-                .map(|(&weight, count)| count / &multiples * choose(n - weight, size - weight))
-                .sum();
-            ceiling = ceiling.min(held);
+        for (weight, count) in &mut held {
+            *count = &*count * (n - size + 1) / (size - *weight);
         }
+        let at_size = weights
+            .as_ref()
+            .map(|weights| weights.counts.get(&size).cloned().unwrap_or_default() / &multiples);
+        if let Some(count) = &at_size {
+            held.push((size, count.clone()));
+        }
+        let ceiling = match &at_size {
+            Some(_) => held.iter().map(|(_, count)| count).sum::<BigUint>().min(all.clone()),
+            None => all.clone(),
+        };
         // On the places of a lightest word live its multiples and nothing else.
-        let floor = match (&weights, distance.exact()) {
-            (Some(weights), Some(d)) if size == d => {
-                weights.counts.get(&d).cloned().unwrap_or_default() / &multiples
-            }
-            (None, Some(d)) if size == d => BigUint::from(1u8),
+        let floor = match (at_size, distance.exact()) {
+            (Some(count), Some(d)) if size == d => count,
+            (None, Some(d)) if size == d => BigUint::one(),
             _ => match fewest.last() {
                 // C(n, s) / C(n, s - 1) = (n - s + 1) / s, rounded up.
                 Some((before, bad)) if before + 1 == size => {

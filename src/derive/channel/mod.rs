@@ -27,25 +27,8 @@ pub struct Figure {
     pub says: String,
 }
 
-/// The names of the figures, with what they mean.
-pub const FIGURES: &[(&str, &str)] = &[
-    (
-        "undetected",
-        "undetected(channel): the probability that errors turn the word sent into another word",
-    ),
-    (
-        "failure",
-        "failure(channel): the probability that more than (d - 1)/2 symbols change, so that a bounded-distance corrector does not give the word sent",
-    ),
-    (
-        "miscorrection",
-        "miscorrection(channel): the probability that a bounded-distance corrector gives a wrong word",
-    ),
-    (
-        "loss",
-        "loss(channel): the probability that the symbols lost on an erasure channel cannot be recovered",
-    ),
-];
+/// The names of the figures.
+pub const FIGURES: &[&str] = &["undetected", "failure", "miscorrection", "loss"];
 
 /// The figure of that name; `None` when there is none.
 ///
@@ -57,7 +40,7 @@ pub fn figure(
     name: &str,
     channel: &Channel,
 ) -> Option<Result<Figure, Trouble>> {
-    FIGURES.iter().find(|(known, _)| *known == name)?;
+    FIGURES.iter().find(|known| **known == name)?;
     if code.dimension() == 0 {
         return Some(Err(Trouble::new(
             catalogue::BAD_NUMBER,
@@ -94,7 +77,7 @@ pub fn figure(
 pub fn figures(session: &Session, code: &Code, channel: &Channel) -> Vec<(&'static str, Figure)> {
     FIGURES
         .iter()
-        .filter_map(|&(name, _)| {
+        .filter_map(|&name| {
             let figure = figure(session, code, name, channel)?.ok()?;
             Some((name, figure))
         })

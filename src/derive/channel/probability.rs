@@ -51,6 +51,23 @@ impl Probability {
     }
 }
 
+impl std::fmt::Display for Probability {
+    /// `is 0.25`, `is 1.5e-9` when so many digits are certain, or the bounds.
+    fn fmt(&self, formatter: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        let (lower, upper) = (decimal(&self.lower, false), decimal(&self.upper, true));
+        let nearest = decimal(&self.upper, false);
+        if lower == upper {
+            write!(formatter, "is {lower}")
+        } else if lower == nearest {
+            write!(formatter, "is {lower}…")
+        } else if self.lower.is_zero() {
+            write!(formatter, "is at most {upper}")
+        } else {
+            write!(formatter, "lies between {lower} and {upper}")
+        }
+    }
+}
+
 /// How likely n symbols are to change, each with probability `rate` on its own and to each of
 /// `wrong` values alike.
 #[derive(Clone, Debug)]
