@@ -9,7 +9,7 @@ use crate::value::{Channel, Trouble, Value};
 use num_bigint::BigInt;
 use num_rational::BigRational;
 use num_traits::ToPrimitive;
-use std::cell::RefCell;
+use std::cell::{Cell, RefCell};
 
 /// The quantities, with what they mean.
 pub const MEASURES: &[(&str, &str)] = &[
@@ -106,6 +106,8 @@ pub struct SessionMeasures<'a> {
     pub session: &'a Session<'a>,
     /// The last judgement of a property that an expression asked for: its grounds and witness.
     pub last: RefCell<Option<super::Judgement>>,
+    /// How hard to look for a distance: what is settled by little is not searched for.
+    pub effort: Cell<Effort>,
 }
 
 impl<'a> SessionMeasures<'a> {
@@ -114,6 +116,7 @@ impl<'a> SessionMeasures<'a> {
         SessionMeasures {
             session,
             last: RefCell::new(None),
+            effort: Cell::new(Effort::Full),
         }
     }
 }
@@ -219,7 +222,7 @@ impl SessionMeasures<'_> {
         name: &str,
         on: &Channel,
     ) -> Option<Result<Measured, Trouble>> {
-        let figure = match channel::figure(self.session, code, name, on)? {
+        let figure = match channel::figure(self.session, code, name, on, self.effort.get())? {
             Ok(figure) => figure,
             Err(trouble) => return Some(Err(trouble)),
         };
@@ -240,7 +243,7 @@ impl SessionMeasures<'_> {
                 "the code holds only the zero word, so it has no distance",
             ));
         }
-        let distance = self.session.distance_by(code, Effort::Full);
+        let distance = self.session.distance_by(code, self.effort.get());
         Ok(match distance.exact() {
             Some(exact) => integer(exact),
             None => Measured::Between(distance.lower, distance.upper),

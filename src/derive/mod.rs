@@ -52,6 +52,8 @@ struct Memo {
 /// How hard to look.
 #[derive(Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Debug)]
 pub enum Effort {
+    /// What theorems say of the code, without a search of its own.
+    Theorems,
     /// Theorems, and what costs next to nothing.
     Small,
     /// Up to the budget.
@@ -87,7 +89,7 @@ impl<'a> Session<'a> {
         let full = Budget::seconds(self.seconds);
         match effort {
             Effort::Full => full,
-            Effort::Small => full.limited_to(SMALL_WORK),
+            Effort::Small | Effort::Theorems => full.limited_to(SMALL_WORK),
         }
     }
 
@@ -118,7 +120,7 @@ impl<'a> Session<'a> {
         if distance.exact().is_none() {
             self.learn_from_weights(code, &mut distance);
         }
-        if distance.exact().is_none() {
+        if distance.exact().is_none() && effort > Effort::Theorems {
             self.search(code, &mut distance, effort);
         }
         distance

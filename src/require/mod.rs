@@ -12,6 +12,7 @@ mod miscorrection;
 mod numbers;
 mod patterns;
 mod phrases;
+mod promise;
 mod relations;
 mod storage;
 mod structure;
@@ -20,7 +21,7 @@ pub use phrases::{Phrase, phrases};
 
 use crate::code::{Code, Distance};
 use crate::derive::{
-    Effort, Judgement, MEASURES, Session, SessionMeasures, Verdict, channel::decimal, properties,
+    Effort, Judgement, MEASURES, Session, SessionMeasures, Verdict, channel::FIGURES, channel::decimal, properties,
     support,
 };
 use crate::evaluate::{CompiledCode, Evaluator, Stop, position_names};
@@ -29,7 +30,7 @@ use crate::source::Span;
 use crate::syntax::tree::{
     ClauseKind, Condition, Expression, ExpressionKind, PhrasePart, Requirement, Strength,
 };
-use crate::value::Value;
+use crate::value::{Channel, Value};
 use num_rational::BigRational;
 
 /// What kind of clause was judged.
@@ -85,6 +86,42 @@ pub fn quantities() -> Vec<&'static str> {
         .collect()
 }
 
+/// The channels that a code's requirements name, as written, each once.
+pub fn channels(evaluator: &Evaluator, compiled: &CompiledCode) -> Vec<(String, Channel)> {
+    let mut found: Vec<(String, Channel)> = Vec::new();
+    let scope = compiled.scope.about(&compiled.code, Vec::new());
+    for clause in &evaluator.declaration_of(compiled).clauses {
+        let ClauseKind::Requirement(requirement) = &clause.kind else {
+            continue;
+        };
+        let Condition::Expression(expression) = &requirement.condition else {
+            continue;
+        };
+        let sides: Vec<&Expression> = match &expression.kind {
+            ExpressionKind::Binary(_, left, right) => vec![left, right],
+            _ => vec![expression],
+        };
+        for side in sides {
+            let ExpressionKind::Call {
+                function,
+                arguments,
+            } = &side.kind
+            else {
+                continue;
+            };
+            if let ([argument], true) = (
+                arguments.as_slice(),
+                FIGURES.contains(&function.text.as_str()),
+            ) && let Ok(Value::Channel(channel)) = evaluator.evaluate(&argument.value, &scope)
+                && !found.iter().any(|(_, known)| *known == channel)
+            {
+                found.push((evaluator.text(argument.value.span), channel));
+            }
+        }
+    }
+    found
+}
+
 impl Court<'_> {
     /// Judges every clause of a code.
     pub fn judge(&self, compiled: &CompiledCode) -> Verdicts {
@@ -100,6 +137,9 @@ impl Court<'_> {
                 ClauseKind::Bits(_) | ClauseKind::Note(_) => {}
             }
         }
+        verdicts
+            .findings
+            .extend(errors::not_at_once(self, compiled));
         verdicts
     }
 
@@ -175,23 +215,44 @@ impl Court<'_> {
         })
     }
 
+    /// A comparison or a property: first with what theorems say of the distance, then after a
+    /// search.
+    fn expression(&self, compiled: &CompiledCode, expression: &Expression) -> Result<Ruling, Stop> {
+        self.measures.effort.set(Effort::Theorems);
+        let quick = self.weighed(compiled, expression);
+        self.measures.effort.set(Effort::Full);
+        match quick {
+            Ok(ruling) if ruling.judgement.verdict == Verdict::Undecided => {
+                self.weighed(compiled, expression)
+            }
+            Err(Stop::Enclosed { .. } | Stop::Unsettled { .. }) => {
+                self.weighed(compiled, expression)
+            }
+            settled => settled,
+        }
+    }
+
     /// A comparison or a property. A distance that is only known to lie in an interval is gone
     /// through value by value: the verdict stands when all agree.
-    fn expression(&self, compiled: &CompiledCode, expression: &Expression) -> Result<Ruling, Stop> {
+    fn weighed(&self, compiled: &CompiledCode, expression: &Expression) -> Result<Ruling, Stop> {
         self.measures.last.borrow_mut().take();
         let says = |holds: bool| self.grounds(compiled, expression, holds);
         match self.assumed(compiled, expression, Vec::new()) {
             Ok(holds) => {
                 let plain = self.measures.last.borrow_mut().take();
                 let judgement = match plain {
-                    Some(judgement) => Judgement {
-                        verdict: if holds {
+                    Some(judgement) => {
+                        let judgement = self.shown(compiled, expression, judgement);
+                        let verdict = if holds {
                             Verdict::Holds
                         } else {
                             Verdict::Fails
-                        },
-                        ..judgement
-                    },
+                        };
+                        Judgement {
+                            verdict,
+                            ..judgement
+                        }
+                    }
                     None => Judgement::of(holds, says(true), says(false)),
                 };
                 Ok(Ruling::new(judgement))
@@ -225,6 +286,32 @@ impl Court<'_> {
             }
             Err(stop) => Err(stop),
         }
+    }
+
+    /// A property's judgement with the places that refute it named.
+    fn shown(
+        &self,
+        compiled: &CompiledCode,
+        expression: &Expression,
+        judgement: Judgement,
+    ) -> Judgement {
+        let (ExpressionKind::Name(name), Some(word), Verdict::Fails) =
+            (&expression.kind, &judgement.witness, judgement.verdict)
+        else {
+            return judgement;
+        };
+        let (positions, _) = support(word);
+        let named = position_names(compiled.position_names.as_deref(), &positions).join(", ");
+        let says = match (name.as_str(), positions.len()) {
+            ("mds", lost) => format!(
+                "{}: the {lost} symbols at {named}, no more than n - k = {}, cannot be recovered when they are lost",
+                judgement.says,
+                compiled.code.redundancy()
+            ),
+            (_, 1..=16) => format!("{}: a word lives at {named}", judgement.says),
+            _ => return judgement,
+        };
+        Judgement { says, ..judgement }
     }
 
     /// A comparison of numbers that are only known to lie between two fractions: it stands when
@@ -472,6 +559,20 @@ impl Ruling {
             help: None,
             needed: None,
         }
+    }
+}
+
+/// What two or fewer columns of a check matrix make of a word that lives there.
+pub(crate) fn of_columns(named: &[String], binary: bool) -> Option<String> {
+    match named {
+        [one] => Some(format!("the column of {one} is zero: no check sees it")),
+        [one, other] if binary => Some(format!(
+            "the columns of {one} and {other} are equal: no check tells them apart"
+        )),
+        [one, other] => Some(format!(
+            "the columns of {one} and {other} are multiples of each other"
+        )),
+        _ => None,
     }
 }
 

@@ -30,7 +30,8 @@ pub struct Figure {
 /// The names of the figures.
 pub const FIGURES: &[&str] = &["undetected", "failure", "miscorrection", "loss"];
 
-/// The figure of that name; `None` when there is none.
+/// The figure of that name, after looking for the distance as hard as said; `None` when there is
+/// none.
 ///
 /// # Errors
 /// When the channel is of the other kind, or the code has no distance.
@@ -39,6 +40,7 @@ pub fn figure(
     code: &Code,
     name: &str,
     channel: &Channel,
+    effort: Effort,
 ) -> Option<Result<Figure, Trouble>> {
     FIGURES.iter().find(|known| **known == name)?;
     if code.dimension() == 0 {
@@ -65,9 +67,9 @@ pub fn figure(
         (_, Channel::Symmetric(rate)) => {
             let noise = Noise::new(code.length(), rate, code.field().order() - 1);
             Ok(match name {
-                "undetected" => undetected(session, code, &noise),
-                "failure" => failure(session, code, &noise),
-                _ => miscorrection(session, code, &noise),
+                "undetected" => undetected(session, code, &noise, effort),
+                "failure" => failure(session, code, &noise, effort),
+                _ => miscorrection(session, code, &noise, effort),
             })
         }
     })
@@ -78,13 +80,13 @@ pub fn figures(session: &Session, code: &Code, channel: &Channel) -> Vec<(&'stat
     FIGURES
         .iter()
         .filter_map(|&name| {
-            let figure = figure(session, code, name, channel)?.ok()?;
+            let figure = figure(session, code, name, channel, Effort::Full)?.ok()?;
             Some((name, figure))
         })
         .collect()
 }
 
-fn undetected(session: &Session, code: &Code, noise: &Noise) -> Figure {
+fn undetected(session: &Session, code: &Code, noise: &Noise, effort: Effort) -> Figure {
     if let Some(weights) = session.weights_by(code, Effort::Full) {
         let counts: Vec<(usize, BigUint)> = weights
             .counts
@@ -96,7 +98,7 @@ fn undetected(session: &Session, code: &Code, noise: &Noise) -> Figure {
             says: format!("summed over the weights ({})", weights.says),
         };
     }
-    let distance = session.distance_by(code, Effort::Full);
+    let distance = session.distance_by(code, effort);
     let tail = noise.more_than(distance.lower - 1);
     // A word and its multiples.
     let multiples = BigUint::from(code.field().order() - 1);
@@ -120,8 +122,8 @@ fn undetected(session: &Session, code: &Code, noise: &Noise) -> Figure {
     }
 }
 
-fn failure(session: &Session, code: &Code, noise: &Noise) -> Figure {
-    let distance = session.distance_by(code, Effort::Full);
+fn failure(session: &Session, code: &Code, noise: &Noise, effort: Effort) -> Figure {
+    let distance = session.distance_by(code, effort);
     let (least, most) = ((distance.lower - 1) / 2, (distance.upper - 1) / 2);
     let n = code.length();
     if least == most {
@@ -139,9 +141,9 @@ fn failure(session: &Session, code: &Code, noise: &Noise) -> Figure {
     }
 }
 
-fn miscorrection(session: &Session, code: &Code, noise: &Noise) -> Figure {
+fn miscorrection(session: &Session, code: &Code, noise: &Noise, effort: Effort) -> Figure {
     let weights = session.weights_by(code, Effort::Full);
-    let distance = session.distance_by(code, Effort::Full);
+    let distance = session.distance_by(code, effort);
     if let (Some(weights), Some(d)) = (weights, distance.exact())
         && let Some(counts) = wrongly_corrected(
             &weights.counts,
