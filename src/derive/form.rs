@@ -19,7 +19,10 @@ pub fn regular(code: &Code) -> Judgement {
     let columns = extremes(structure::column_weights(check));
     Judgement::of(
         rows.0 == rows.1 && columns.0 == columns.1,
-        format!("every row has weight {}, every column {}", rows.0, columns.0),
+        format!(
+            "every row has weight {}, every column {}",
+            rows.0, columns.0
+        ),
         format!(
             "row weights run from {} to {}, column weights from {} to {}",
             rows.0, rows.1, columns.0, columns.1
@@ -122,9 +125,12 @@ pub fn quasi_cyclic(code: &Code, index: usize) -> Judgement {
     };
     match shifted(&|at| (at + n - index) % n) {
         None => Judgement::holds(format!("a shift by {index} positions takes a basis to words")),
-        Some(_) => Judgement::fails(format!(
-            "neither a shift by {index} positions nor one within {index} blocks takes every word to a word"
-        ))
+        Some(_) => Judgement::fails(match index {
+            1 => "a cyclic shift by one position does not take every word to a word".to_string(),
+            _ => format!(
+                "neither a shift by {index} positions nor one within {index} blocks takes every word to a word"
+            ),
+        })
         .witness(Some(word)),
     }
 }
@@ -143,8 +149,7 @@ pub fn divisible(session: &Session, code: &Code, by: usize) -> Judgement {
         let Some(&odd) = odd else {
             return Judgement::holds(format!("every weight that occurs is a multiple of {by}"));
         };
-        return Judgement::fails(format!("words of weight {odd} occur"))
-            .witness(row_off(code, by));
+        return Judgement::fails(format!("words of weight {odd} occur")).witness(row_off(code, by));
     }
     if properties::divisor(code).is_multiple_of(by) {
         return Judgement::holds(format!(

@@ -51,7 +51,10 @@ pub fn of_positions(session: &Session, code: &Code) -> Result<Vec<Known>, usize>
     let mut touched = vec![false; n];
     // At most k: the other columns of a generator matrix span all of it.
     let mut known = vec![Known { lower: 0, upper: k }; n];
-    for matrix in [Some(check), code.check_matrix_as_built()].into_iter().flatten() {
+    for matrix in [Some(check), code.check_matrix_as_built()]
+        .into_iter()
+        .flatten()
+    {
         for row in 0..matrix.rows() {
             let weight = matrix.row_weight(row);
             for (at, _) in matrix.nonzero(row) {
@@ -129,7 +132,13 @@ fn by_sets(code: &Code, known: &mut [Known]) {
             return;
         }
         let mut found = Vec::new();
-        dependent(&mut Basis::new(&columns), 0, size, &mut Vec::new(), &mut found);
+        dependent(
+            &mut Basis::new(&columns),
+            0,
+            size,
+            &mut Vec::new(),
+            &mut found,
+        );
         for set in found {
             let word = columns.word_at(&set).expect("dependent columns");
             let weight = crate::code::weight(&word);
@@ -247,11 +256,17 @@ impl Support {
     }
 
     fn meets(&self, other: &Support) -> bool {
-        self.0.iter().zip(other.0).any(|(left, right)| left & right != 0)
+        self.0
+            .iter()
+            .zip(other.0)
+            .any(|(left, right)| left & right != 0)
     }
 
     fn inside(&self, other: &Support) -> bool {
-        self.0.iter().zip(other.0).all(|(left, right)| left & !right == 0)
+        self.0
+            .iter()
+            .zip(other.0)
+            .all(|(left, right)| left & !right == 0)
     }
 
     fn with(self, other: &Support) -> Support {

@@ -158,7 +158,9 @@ impl Measures for SessionMeasures<'_> {
                     }
                 ),
             )
-            .help(format!("declare one, `channel sea = bsc(0.004)`, and write `{name}(sea)`"))),
+            .help(format!(
+                "declare one, `channel sea = bsc(0.004)`, and write `{name}(sea)`"
+            ))),
             (_, []) => self.plain(code, name)?,
             _ => return None,
         };
@@ -216,12 +218,7 @@ impl SessionMeasures<'_> {
         Measured::Exactly(Value::Boolean(holds))
     }
 
-    fn figure(
-        &self,
-        code: &Code,
-        name: &str,
-        on: &Channel,
-    ) -> Option<Result<Measured, Trouble>> {
+    fn figure(&self, code: &Code, name: &str, on: &Channel) -> Option<Result<Measured, Trouble>> {
         let figure = match channel::figure(self.session, code, name, on, self.effort.get())? {
             Ok(figure) => figure,
             Err(trouble) => return Some(Err(trouble)),

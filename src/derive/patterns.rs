@@ -323,8 +323,7 @@ pub fn test_bursts(
     at_once: usize,
 ) -> Tested {
     let sets = windows(code.length(), span, wrap);
-    let cyclic =
-        sets.len() > 1 && properties::is_cyclic(session, code).verdict == Verdict::Holds;
+    let cyclic = sets.len() > 1 && properties::is_cyclic(session, code).verdict == Verdict::Holds;
     test_unions(code, &sets, at_once, cyclic)
 }
 
@@ -347,7 +346,11 @@ pub fn burst_detection(session: &Session, code: &Code, wrap: bool) -> (usize, us
     let mut basis = Basis::new(&columns);
     let mut best = most;
     for start in 0..n {
-        let reach = if wrap { start + best } else { n.min(start + best) };
+        let reach = if wrap {
+            start + best
+        } else {
+            n.min(start + best)
+        };
         basis.truncate(0);
         if let Some(end) = (start..reach).find(|&at| !basis.push(at % n)) {
             best = end - start;

@@ -167,9 +167,7 @@ impl Court<'_> {
                     let mut label = format!("a word of weight {}: {named}", positions.len());
                     let names: Vec<String> = positions
                         .iter()
-                        .flat_map(|&at| {
-                            position_names(compiled.position_names.as_deref(), &[at])
-                        })
+                        .flat_map(|&at| position_names(compiled.position_names.as_deref(), &[at]))
                         .collect();
                     if let Some(columns) = of_columns(&names, compiled.code.field().is_binary()) {
                         label = columns;

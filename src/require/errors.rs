@@ -244,7 +244,11 @@ fn by_distance(
     let mut says = format!("d = {shown}, but {formula} = {needed} is needed");
     if let Some(word) = &distance.witness {
         says = format!("{says}: {}", story(asked, word));
-        let named: Vec<String> = support(word).0.iter().map(|&at| asked.named(&[at])).collect();
+        let named: Vec<String> = support(word)
+            .0
+            .iter()
+            .map(|&at| asked.named(&[at]))
+            .collect();
         if let Some(columns) = of_columns(&named, code.field().is_binary()) {
             says = format!("{says}; {columns}");
         }

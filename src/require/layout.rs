@@ -75,11 +75,7 @@ fn positions_of(
         _ => return Err(no_group(argument.value.span, "this", &layout)),
     };
     let Some((_, positions)) = layout.iter().find(|(known, _)| known == name) else {
-        return Err(no_group(
-            argument.value.span,
-            &format!("`{name}`"),
-            &layout,
-        ));
+        return Err(no_group(argument.value.span, &format!("`{name}`"), &layout));
     };
     let Some(index) = index else {
         return Ok(positions.clone());
@@ -89,7 +85,10 @@ fn positions_of(
         Value::Set(members) => members.to_vec(),
         Value::Integer(number) => vec![Value::Integer(number)],
         other => {
-            let message = format!("bits are picked by an index or a range, not {}", other.kind());
+            let message = format!(
+                "bits are picked by an index or a range, not {}",
+                other.kind()
+            );
             return Err(wrong(catalogue::WRONG_TYPE, index.span, message));
         }
     };

@@ -30,15 +30,17 @@ pub const PHRASES: &[Phrase] = &[
     Phrase {
         pattern: "meets gilbert_varshamov",
         says: "d is at least what Gilbert and Varshamov promise of some linear code with this n and k.",
-        decide: |asked| meets(asked, "what Gilbert and Varshamov promise", bounds::gilbert_varshamov),
+        decide: |asked| {
+            meets(
+                asked,
+                "what Gilbert and Varshamov promise",
+                bounds::gilbert_varshamov,
+            )
+        },
     },
 ];
 
-fn meets(
-    asked: &Asked,
-    name: &str,
-    bound: fn(u64, usize, usize) -> usize,
-) -> Result<Ruling, Stop> {
+fn meets(asked: &Asked, name: &str, bound: fn(u64, usize, usize) -> usize) -> Result<Ruling, Stop> {
     let code = asked.code();
     if code.dimension() == 0 {
         return Ok(Ruling::new(Judgement::fails(

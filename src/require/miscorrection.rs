@@ -137,9 +137,9 @@ fn never(asked: &Asked, weight: usize) -> Result<Ruling, Stop> {
             "d = {d} and t = {t}: an error in {weight} places can lie within {t} of a word of weight {d}"
         )),
         None => Judgement::undecided("the weights are not known"),
-        Some(count) if count.is_zero() => Judgement::holds(format!(
-            "no word's weight lies within t = {t} of {weight}"
-        )),
+        Some(count) if count.is_zero() => {
+            Judgement::holds(format!("no word's weight lies within t = {t} of {weight}"))
+        }
         Some(count) => Judgement::fails(format!(
             "{count} errors in {weight} places become a wrong word, with t = {t}"
         )),
@@ -154,11 +154,7 @@ fn refuted(asked: &Asked, word: &[Element], weight: usize, t: usize, d: usize) -
     let added: Vec<usize> = outside.take(missing).collect();
     let corrected: Vec<usize> = positions.split_off(weight.min(positions.len()));
     positions.extend(added.iter().copied());
-    let wrong = if added.is_empty() {
-        &corrected
-    } else {
-        &added
-    };
+    let wrong = if added.is_empty() { &corrected } else { &added };
     let says = if wrong.is_empty() {
         format!(
             "d = {d}: errors at {} turn a word into another",

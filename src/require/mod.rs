@@ -21,8 +21,8 @@ pub use phrases::{Phrase, phrases};
 
 use crate::code::{Code, Distance};
 use crate::derive::{
-    Effort, Judgement, MEASURES, Session, SessionMeasures, Verdict, channel::FIGURES, channel::decimal, properties,
-    support,
+    Effort, Judgement, MEASURES, Session, SessionMeasures, Verdict, channel::FIGURES,
+    channel::decimal, properties, support,
 };
 use crate::evaluate::{CompiledCode, Evaluator, Stop, position_names};
 use crate::finding::{Code as FindingCode, Finding, Related, catalogue, near_names};
@@ -330,7 +330,10 @@ impl Court<'_> {
         let Some(verdict) = numbers::compared(*operator, &one, &other) else {
             return Err(stop);
         };
-        let says = [one_says, other_says].into_iter().flatten().collect::<Vec<_>>();
+        let says = [one_says, other_says]
+            .into_iter()
+            .flatten()
+            .collect::<Vec<_>>();
         Ok(Ruling::new(Judgement {
             verdict,
             says: says.join(" and "),

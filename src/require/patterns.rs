@@ -100,7 +100,9 @@ pub const PHRASES: &[Phrase] = &[
 ];
 
 fn too_much(what: &str) -> Ruling {
-    let mut ruling = Ruling::new(Judgement::undecided(format!("there are too many {what} to test")));
+    let mut ruling = Ruling::new(Judgement::undecided(format!(
+        "there are too many {what} to test"
+    )));
     ruling.help = Some("shorten the code, or ask for less".into());
     ruling
 }
@@ -114,32 +116,43 @@ fn bursts(asked: &Asked, wrap: bool, at_once: usize) -> Result<Ruling, Stop> {
             "the code has only one word, so no error leads to another",
         )));
     }
-    let together = if at_once == 1 { "each window" } else { "any two windows" };
-    Ok(match patterns::test_bursts(session, code, span, wrap, at_once) {
-        Tested::Independent => Ruling::new(Judgement::holds(format!(
-            "the checks at {together} of {span} neighbouring positions are independent"
-        ))),
-        Tested::TooMuch => too_much("windows"),
-        Tested::Dependent { sets, word } => {
-            let first = &patterns::windows(n, span, wrap)[sets[0]];
-            let mut ruling = Ruling::new(
-                Judgement::fails(story(asked, &word, first, at_once)).witness(Some(word)),
-            );
-            ruling.help = limit_help(asked, wrap, at_once);
-            ruling
-        }
-    })
+    let together = if at_once == 1 {
+        "each window"
+    } else {
+        "any two windows"
+    };
+    Ok(
+        match patterns::test_bursts(session, code, span, wrap, at_once) {
+            Tested::Independent => Ruling::new(Judgement::holds(format!(
+                "the checks at {together} of {span} neighbouring positions are independent"
+            ))),
+            Tested::TooMuch => too_much("windows"),
+            Tested::Dependent { sets, word } => {
+                let first = &patterns::windows(n, span, wrap)[sets[0]];
+                let mut ruling = Ruling::new(
+                    Judgement::fails(story(asked, &word, first, at_once)).witness(Some(word)),
+                );
+                ruling.help = limit_help(asked, wrap, at_once);
+                ruling
+            }
+        },
+    )
 }
 
 /// The word as one error that goes unseen, or as two that look alike, the first inside a set.
 fn story(asked: &Asked, word: &[u32], first: &[usize], at_once: usize) -> String {
     let (positions, _) = support(word);
-    let (one, other): (Vec<usize>, Vec<usize>) =
-        positions.iter().partition(|position| first.contains(position));
+    let (one, other): (Vec<usize>, Vec<usize>) = positions
+        .iter()
+        .partition(|position| first.contains(position));
     if at_once == 1 || one.is_empty() || other.is_empty() {
         return format!(
             "{} at {} turn a word into another and go unseen{}",
-            if positions.len() == 1 { "an error" } else { "errors" },
+            if positions.len() == 1 {
+                "an error"
+            } else {
+                "errors"
+            },
             asked.named(&positions),
             values(word)
         );
@@ -219,37 +232,41 @@ fn groups(asked: &Asked, operand: Option<usize>, how: Use) -> Result<Ruling, Sto
         Use::Corrects => count.saturating_mul(2),
         Use::Detects | Use::Recovers => count,
     };
-    Ok(match patterns::test_unions(asked.code(), &sets, at_once, false) {
-        Tested::Independent => Ruling::new(Judgement::holds(format!(
-            "the checks at any {} of the {} groups are independent",
-            at_once.min(sets.len()),
-            sets.len()
-        ))),
-        Tested::TooMuch => too_much("choices of groups"),
-        Tested::Dependent { sets: found, word } => {
-            let says = match how {
-                Use::Recovers => format!(
-                    "what is lost in {} cannot be recovered: a word lives at {}{}",
-                    listed(&names, &found),
-                    asked.word_named(&word),
-                    values(&word)
-                ),
-                Use::Detects => format!(
-                    "errors in {} go unseen: a word lives at {}{}",
-                    listed(&names, &found),
-                    asked.word_named(&word),
-                    values(&word)
-                ),
-                Use::Corrects => {
-                    let (one, _) = found.split_at(count.min(found.len()));
-                    let first: Vec<usize> =
-                        one.iter().flat_map(|&at| sets[at].iter().copied()).collect();
-                    story(asked, &word, &first, 2)
-                }
-            };
-            Ruling::new(Judgement::fails(says).witness(Some(word)))
-        }
-    })
+    Ok(
+        match patterns::test_unions(asked.code(), &sets, at_once, false) {
+            Tested::Independent => Ruling::new(Judgement::holds(format!(
+                "the checks at any {} of the {} groups are independent",
+                at_once.min(sets.len()),
+                sets.len()
+            ))),
+            Tested::TooMuch => too_much("choices of groups"),
+            Tested::Dependent { sets: found, word } => {
+                let says = match how {
+                    Use::Recovers => format!(
+                        "what is lost in {} cannot be recovered: a word lives at {}{}",
+                        listed(&names, &found),
+                        asked.word_named(&word),
+                        values(&word)
+                    ),
+                    Use::Detects => format!(
+                        "errors in {} go unseen: a word lives at {}{}",
+                        listed(&names, &found),
+                        asked.word_named(&word),
+                        values(&word)
+                    ),
+                    Use::Corrects => {
+                        let (one, _) = found.split_at(count.min(found.len()));
+                        let first: Vec<usize> = one
+                            .iter()
+                            .flat_map(|&at| sets[at].iter().copied())
+                            .collect();
+                        story(asked, &word, &first, 2)
+                    }
+                };
+                Ruling::new(Judgement::fails(says).witness(Some(word)))
+            }
+        },
+    )
 }
 
 fn listed(names: &[String], found: &[usize]) -> String {

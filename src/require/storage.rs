@@ -26,17 +26,29 @@ fn repairs(asked: &Asked) -> Result<Ruling, Stop> {
     };
     let worst = |end: fn(&locality::Known) -> usize| {
         let most = positions.iter().map(end).max().unwrap_or(0);
-        (positions.iter().position(|known| end(known) == most).unwrap_or(0), most)
+        (
+            positions
+                .iter()
+                .position(|known| end(known) == most)
+                .unwrap_or(0),
+            most,
+        )
     };
     let (at, needed) = worst(|known| known.lower);
     let (_, enough) = worst(|known| known.upper);
     Ok(Ruling::new(if enough <= allowed {
-        Judgement::holds(format!("every symbol follows from {enough} others or fewer"))
+        Judgement::holds(format!(
+            "every symbol follows from {enough} others or fewer"
+        ))
     } else if needed > allowed {
         Judgement::fails(format!(
             "no {allowed} others give the symbol at {}; it takes {}{needed}",
             asked.named(&[at]),
-            if positions[at].upper == needed { "" } else { "at least " }
+            if positions[at].upper == needed {
+                ""
+            } else {
+                "at least "
+            }
         ))
     } else {
         Judgement::undecided(format!(

@@ -39,7 +39,12 @@ pub const PHRASES: &[Phrase] = &[
     Phrase {
         pattern: "quasi_cyclic of index _",
         says: "A cyclic shift by N positions, or of each of N blocks of equal length by one, takes words to words.",
-        decide: |asked| Ok(Ruling::new(form::quasi_cyclic(asked.code(), asked.number(0)?))),
+        decide: |asked| {
+            Ok(Ruling::new(form::quasi_cyclic(
+                asked.code(),
+                asked.number(0)?,
+            )))
+        },
     },
 ];
 

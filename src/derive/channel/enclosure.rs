@@ -29,7 +29,10 @@ impl Rounded {
             return Rounded { mantissa, exponent };
         }
         let mut kept = &mantissa >> surplus;
-        if toward == Toward::Above && mantissa.trailing_zeros().is_some_and(|zeros| zeros < surplus)
+        if toward == Toward::Above
+            && mantissa
+                .trailing_zeros()
+                .is_some_and(|zeros| zeros < surplus)
         {
             kept += 1u8;
         }
@@ -170,7 +173,12 @@ impl Enclosure {
     /// This · numerator / denominator, the latter not zero.
     pub(super) fn scaled(&self, numerator: &BigUint, denominator: &BigUint) -> Enclosure {
         let end = |end: &Rounded, toward| {
-            Rounded::quotient(&(&end.mantissa * numerator), denominator, end.exponent, toward)
+            Rounded::quotient(
+                &(&end.mantissa * numerator),
+                denominator,
+                end.exponent,
+                toward,
+            )
         };
         Enclosure {
             lower: end(&self.lower, Toward::Below),

@@ -119,7 +119,11 @@ fn bounds(session: &Session, code: &Code) -> (Sets, Sets) {
             held.push((size, count.clone()));
         }
         let ceiling = match &at_size {
-            Some(_) => held.iter().map(|(_, count)| count).sum::<BigUint>().min(all.clone()),
+            Some(_) => held
+                .iter()
+                .map(|(_, count)| count)
+                .sum::<BigUint>()
+                .min(all.clone()),
             None => all.clone(),
         };
         // On the places of a lightest word live its multiples and nothing else.

@@ -196,8 +196,10 @@ impl<'a> Search<'a> {
 
     /// What follows from n, k and the divisor alone.
     fn bound_by_size(&mut self) {
-        self.raise(self.settled.lower.max(1), "divisor", String::new);
-        self.settled.says.retain(|ground| !ground.says.is_empty());
+        let least = self.settled.lower.max(1);
+        self.raise(least, "divisor", || {
+            format!("no word but zero has a weight below {least}")
+        });
         let singleton = self.n - self.k + 1;
         if singleton < self.settled.upper {
             self.settled.upper = singleton;
