@@ -1,14 +1,15 @@
 //! The quantities of a code that expressions can name.
 
-use super::{Effort, Session, Verdict, properties, structure};
+use super::channel::{self, FIGURES};
+use super::{Effort, Session, Verdict, form, locality, patterns, properties, structure};
 use crate::code::Code;
 use crate::evaluate::{Measured, Measures};
 use crate::finding::catalogue;
-use crate::value::{Trouble, Value};
+use crate::value::{Channel, Trouble, Value};
 use num_bigint::BigInt;
 use num_rational::BigRational;
 use num_traits::ToPrimitive;
-use std::cell::RefCell;
+use std::cell::{Cell, RefCell};
 
 /// The quantities, with what they mean.
 pub const MEASURES: &[(&str, &str)] = &[
@@ -36,6 +37,58 @@ pub const MEASURES: &[(&str, &str)] = &[
         "covering_radius",
         "the greatest distance of any word of the space from the code",
     ),
+    (
+        "burst_detection",
+        "the largest N such that every error within N positions in a row is detected",
+    ),
+    (
+        "burst_correction",
+        "the largest N such that every error within N positions in a row is corrected",
+    ),
+    (
+        "cyclic_burst_detection",
+        "burst_detection, the first position following the last",
+    ),
+    (
+        "cyclic_burst_correction",
+        "burst_correction, the first position following the last",
+    ),
+    (
+        "locality",
+        "how many other symbols give a lost one, for the worst position",
+    ),
+    (
+        "availability",
+        "in how many ways without a common position a symbol follows from others, for the worst position",
+    ),
+    (
+        "update_cost",
+        "the most checks that change when one data symbol does",
+    ),
+    (
+        "regular",
+        "all rows of the check matrix as built have one weight, all columns another",
+    ),
+    (
+        "triangular",
+        "the checks at one end follow one after the other from the rows of the check matrix as built",
+    ),
+    (
+        "undetected",
+        "undetected(channel): the probability that errors turn a word into another",
+    ),
+    (
+        "failure",
+        "failure(channel): the probability that more than (d - 1)/2 symbols change",
+    ),
+    (
+        "miscorrection",
+        "miscorrection(channel): the probability that correcting up to (d - 1)/2 errors gives a wrong word",
+    ),
+    (
+        "loss",
+        "loss(channel): the probability that what an erasure channel loses cannot be recovered",
+    ),
 ];
 
 /// All names that [`SessionMeasures`] answers to: quantities and properties.
@@ -53,6 +106,8 @@ pub struct SessionMeasures<'a> {
     pub session: &'a Session<'a>,
     /// The last judgement of a property that an expression asked for: its grounds and witness.
     pub last: RefCell<Option<super::Judgement>>,
+    /// How hard to look for a distance: what is settled by little is not searched for.
+    pub effort: Cell<Effort>,
 }
 
 impl<'a> SessionMeasures<'a> {
@@ -61,6 +116,7 @@ impl<'a> SessionMeasures<'a> {
         SessionMeasures {
             session,
             last: RefCell::new(None),
+            effort: Cell::new(Effort::Full),
         }
     }
 }
@@ -90,6 +146,21 @@ impl Measures for SessionMeasures<'_> {
                 catalogue::BAD_ARGUMENT,
                 "`weights` takes one integer, as in `weights(4)`",
             )),
+            (_, [Value::Channel(channel)]) => self.figure(code, name, channel)?,
+            (_, arguments) if FIGURES.contains(&name) => Err(Trouble::new(
+                catalogue::BAD_ARGUMENT,
+                format!(
+                    "`{name}` takes one channel, not {}",
+                    match arguments {
+                        [] => "nothing",
+                        [other] => other.kind(),
+                        _ => "several values",
+                    }
+                ),
+            )
+            .help(format!(
+                "declare one, `channel sea = bsc(0.004)`, and write `{name}(sea)`"
+            ))),
             (_, []) => self.plain(code, name)?,
             _ => return None,
         };
@@ -125,7 +196,40 @@ impl SessionMeasures<'_> {
                         .ok_or_else(|| unknown("the covering radius")),
                 );
             }
+            "burst_detection" => span(patterns::burst_detection(self.session, code, false)),
+            "burst_correction" => span(patterns::burst_correction(self.session, code, false)),
+            "cyclic_burst_detection" => span(patterns::burst_detection(self.session, code, true)),
+            "cyclic_burst_correction" => span(patterns::burst_correction(self.session, code, true)),
+            "locality" => return Some(repair(locality::locality(self.session, code))),
+            "availability" => return Some(repair(locality::availability(self.session, code))),
+            "update_cost" => {
+                let cost = locality::update_cost(code);
+                return Some(cost.map(integer).ok_or_else(|| unknown("the update cost")));
+            }
+            "regular" => self.judged(form::regular(code)),
+            "triangular" => self.judged(form::triangular(code)),
             _ => return self.property(code, name),
+        }))
+    }
+
+    fn judged(&self, judgement: super::Judgement) -> Measured {
+        let holds = judgement.verdict == Verdict::Holds;
+        *self.last.borrow_mut() = Some(judgement);
+        Measured::Exactly(Value::Boolean(holds))
+    }
+
+    fn figure(&self, code: &Code, name: &str, on: &Channel) -> Option<Result<Measured, Trouble>> {
+        let figure = match channel::figure(self.session, code, name, on, self.effort.get())? {
+            Ok(figure) => figure,
+            Err(trouble) => return Some(Err(trouble)),
+        };
+        let says = format!("{name} {}; {}", figure.value, figure.says);
+        *self.last.borrow_mut() = Some(super::Judgement::holds(says));
+        let (lower, upper) = (figure.value.lower, figure.value.upper);
+        Some(Ok(if lower == upper {
+            Measured::Exactly(Value::rational(lower))
+        } else {
+            Measured::Within(lower, upper)
         }))
     }
 
@@ -136,7 +240,7 @@ impl SessionMeasures<'_> {
                 "the code holds only the zero word, so it has no distance",
             ));
         }
-        let distance = self.session.distance_by(code, Effort::Full);
+        let distance = self.session.distance_by(code, self.effort.get());
         Ok(match distance.exact() {
             Some(exact) => integer(exact),
             None => Measured::Between(distance.lower, distance.upper),
@@ -168,6 +272,25 @@ impl SessionMeasures<'_> {
         };
         *self.last.borrow_mut() = Some(judgement);
         Some(measured)
+    }
+}
+
+fn span((lower, upper): (usize, usize)) -> Measured {
+    if lower == upper {
+        integer(lower)
+    } else {
+        Measured::Between(lower, upper)
+    }
+}
+
+fn repair(known: Result<locality::Known, usize>) -> Result<Measured, Trouble> {
+    match known {
+        Ok(known) => Ok(span((known.lower, known.upper))),
+        Err(position) => Err(Trouble::new(
+            catalogue::BAD_NUMBER,
+            format!("position {position} follows from no other: no check touches it"),
+        )
+        .help("a lost symbol there is lost for good; check it, or puncture it away")),
     }
 }
 

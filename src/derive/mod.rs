@@ -4,7 +4,11 @@
 //! applies the theorems first, asks the parents where they need it, then searches, cheapest way
 //! first, until both sides meet or the budget is gone. Every answer is remembered.
 
+pub mod channel;
+pub mod form;
+pub mod locality;
 pub mod measures;
+pub mod patterns;
 pub mod properties;
 pub mod search;
 pub mod structure;

@@ -266,6 +266,10 @@ impl Evaluator<'_> {
                 lower,
                 upper,
             }),
+            Measured::Within(lower, upper) => Err(Stop::Enclosed {
+                name: name.to_string(),
+                ends: Box::new((lower, upper)),
+            }),
         }
     }
 }

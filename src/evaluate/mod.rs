@@ -27,6 +27,7 @@ use crate::finding::{Finding, catalogue};
 use crate::graph::Program;
 use crate::source::{Loader, Sources, Span};
 use crate::value::Value;
+use num_rational::BigRational;
 use petgraph::graph::NodeIndex;
 use std::cell::{Cell, RefCell};
 use std::collections::HashMap;
@@ -52,6 +53,13 @@ pub enum Stop {
         /// At most this.
         upper: usize,
     },
+    /// A probability is only known to lie between two fractions.
+    Enclosed {
+        /// Its name.
+        name: String,
+        /// The two, both included.
+        ends: Box<(BigRational, BigRational)>,
+    },
 }
 
 impl From<Box<Finding>> for Stop {
@@ -70,6 +78,8 @@ pub enum Measured {
     Exactly(Value),
     /// An integer between these.
     Between(usize, usize),
+    /// A number between these, both included.
+    Within(BigRational, BigRational),
 }
 
 /// Answers what an expression asks of a code: its distance, its weights, its dual, a property.
@@ -144,6 +154,14 @@ impl<'a> Evaluator<'a> {
                     format!("{name} is only known to lie in {lower}..{upper} here"),
                 )
                 .help("give a larger --budget, or do not choose by it"),
+            ),
+            Stop::Enclosed { name, .. } => self.report(
+                Finding::new(
+                    catalogue::CLAIM_UNDECIDED,
+                    span,
+                    format!("{name} is only known between two bounds here"),
+                )
+                .help("compare it alone with a number"),
             ),
         }
     }

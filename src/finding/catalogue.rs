@@ -96,6 +96,7 @@ catalogue! {
     REQUIREMENT_UNDECIDED = "requirement-undecided", Error, Undecided, "The requirement was neither proven nor refuted within the budget.";
     PREFERENCE_FAILS = "preference-fails", Warning, Remark, "The code does not do what is preferred.";
     PREFERENCE_UNDECIDED = "preference-undecided", Warning, Remark, "The preference was neither proven nor refuted within the budget.";
+    NOT_AT_ONCE = "not-at-once", Advice, Remark, "Two requirements hold each alone, but no one decoder gives both: what is corrected takes distance away from what is detected.";
     UNKNOWN_REQUIREMENT = "unknown-requirement", Error, Malformed, "No requirement reads like this.";
 
     // Files handed over.

@@ -1,17 +1,18 @@
 //! Fills the plain data of a report from what was derived.
 
 use super::model::{
-    CodeReport, DistanceReport, Ground, Interval, Measure, PropertyReport, RequirementReport, Side,
-    StepReport, Weights, Witness,
+    CodeReport, DistanceReport, Figure, Ground, Interval, Measure, Nature, PropertyReport,
+    RequirementReport, Side, StepReport, Weights, Witness,
 };
 use crate::code::{self, Code, Distance, Space};
 use crate::derive::search::{bounds, linear_programming};
-use crate::derive::{Effort, Session, properties, structure, support};
+use crate::derive::{Effort, Session, channel, properties, structure, support};
 use crate::evaluate::{CompiledCode, Evaluator};
 use crate::project::{Checked, View};
-use crate::require::{Judged, Kind};
+use crate::require::{self, Judged, Kind};
 use crate::syntax::tree::ClauseKind;
 use crate::value::Value;
+use num_rational::BigRational;
 use serde_json::json;
 
 /// The most entries of a check matrix whose rows and columns are weighed for a report.
@@ -54,6 +55,7 @@ pub fn describe(view: &View, checked: &Checked) -> CodeReport {
         );
     }
     measures(code, &mut report);
+    report.figures = figures(view, compiled);
     report.steps = steps(session, code);
     for judged in &checked.verdicts.clauses {
         let entry = requirement(judged);
@@ -176,6 +178,35 @@ fn measures(code: &Code, report: &mut CodeReport) {
     if let Ok(Some(girth)) = structure::girth(check) {
         push("girth", json!(girth));
     }
+}
+
+/// The figures on every channel that a requirement of the code names.
+fn figures(view: &View, compiled: &CompiledCode) -> Vec<Figure> {
+    let mut found = Vec::new();
+    for (name, on) in require::channels(view.evaluator, compiled) {
+        for (figure, known) in channel::figures(view.session, &compiled.code, &on) {
+            let (lower, upper) = (&known.value.lower, &known.value.upper);
+            let certain = channel::decimal(lower, false) == channel::decimal(upper, false);
+            let mut push = |nature, value| {
+                found.push(Figure {
+                    name: figure.to_string(),
+                    channel: name.clone(),
+                    value,
+                    nature,
+                    says: known.says.clone(),
+                });
+            };
+            if certain {
+                push(Nature::Exact, channel::decimal(lower, false));
+                continue;
+            }
+            push(Nature::Upper, channel::decimal(upper, true));
+            if *lower > BigRational::from_integer(0.into()) {
+                push(Nature::Lower, channel::decimal(lower, false));
+            }
+        }
+    }
+    found
 }
 
 fn steps(session: &Session, code: &Code) -> Vec<StepReport> {

@@ -1,10 +1,10 @@
 //! `is [n, k, d] with weights {…}`.
 
-use super::{Court, Judged, Kind, Verdicts, claim_code, interval};
-use crate::code::Distance;
-use crate::derive::{Effort, Judgement, Verdict, support};
+use super::{Court, Judged, Kind, Verdicts, claim_code, interval, of_columns, promise};
+use crate::code::{Code, Distance, Space};
+use crate::derive::{Effort, Judgement, Verdict, structure, support};
 use crate::evaluate::{Claimed, CompiledCode, Expected, position_names};
-use crate::finding::{Finding, catalogue};
+use crate::finding::{Finding, Related, catalogue};
 use crate::source::Span;
 use crate::syntax::tree::{BinaryOperator, Claim};
 use num_bigint::BigUint;
@@ -71,6 +71,13 @@ impl Court<'_> {
         let mut finding = Finding::new(finding_code, expected.span, message)
             .label(format!("{which} is {actual}: {grounds}"))
             .help(format!("write {actual} here if that is what is meant"));
+        if which == "k" {
+            let rows = dependent_rows(code);
+            finding.related.extend(rows.map(|message| Related {
+                message,
+                span: code.trail()[0].origin().span,
+            }));
+        }
         // The first step after which the number is the one found, seen from the end.
         if let Some(step) = code.trail().iter().find(|step| match which {
             "n" => step.length() == actual,
@@ -169,6 +176,13 @@ impl Court<'_> {
                     let named =
                         position_names(compiled.position_names.as_deref(), &positions).join(", ");
                     let mut label = format!("a word of weight {}: {named}", positions.len());
+                    let names: Vec<String> = positions
+                        .iter()
+                        .flat_map(|&at| position_names(compiled.position_names.as_deref(), &[at]))
+                        .collect();
+                    if let Some(columns) = of_columns(&names, compiled.code.field().is_binary()) {
+                        label = columns;
+                    }
                     if values.iter().any(|&value| value != 1) {
                         label = format!("{label}, with values {values:?}");
                     }
@@ -183,6 +197,12 @@ impl Court<'_> {
                 finding
                     .related
                     .extend(self.blame(&compiled.code, wanted.to_usize().unwrap_or(0)));
+                let longest = promise::longest(&compiled.code, wanted.to_usize().unwrap_or(0));
+                if let Some(length) = longest {
+                    finding = finding.help(format!(
+                        "up to length {length} this generator keeps d >= {wanted}; beyond it, write {shown}"
+                    ));
+                }
             }
         } else {
             let grounds: Vec<&str> = distance
@@ -251,6 +271,28 @@ impl Court<'_> {
         verdicts.findings.push(finding);
         Judgement::fails(format!("there are {actual} words of weight {weight}"))
     }
+}
+
+/// The rows of the check matrix as built that make k larger than n minus their number.
+fn dependent_rows(code: &Code) -> Option<String> {
+    let code = &code.trail()[0];
+    let Space::Check(check) = code.space() else {
+        return None;
+    };
+    let small = check.rows().saturating_mul(check.columns()) <= 1 << 22;
+    if !small || check.rows() == code.redundancy() {
+        return None;
+    }
+    let rows: Vec<String> = structure::dependent_rows(check)?
+        .iter()
+        .map(usize::to_string)
+        .collect();
+    Some(format!(
+        "{} rows have rank {}: rows {} are dependent",
+        check.rows(),
+        code.redundancy(),
+        rows.join(", ")
+    ))
 }
 
 fn relation(expected: &Expected) -> String {

@@ -1,9 +1,14 @@
 //! Random errors and losses: decided by the distance alone.
 
-use super::{Asked, Phrase, Ruling, interval};
+use super::{Asked, Court, Phrase, Ruling, interval, of_columns, phrases};
 use crate::code::Side;
 use crate::derive::{Effort, Judgement, support};
-use crate::evaluate::Stop;
+use crate::evaluate::{CompiledCode, Stop};
+use crate::finding::{Finding, catalogue};
+use crate::source::Span;
+use crate::syntax::tree::{ClauseKind, Condition, PhrasePart};
+use crate::value::Value;
+use num_traits::ToPrimitive;
 
 /// The phrases of this file.
 pub const PHRASES: &[Phrase] = &[
@@ -125,6 +130,61 @@ fn together(d: usize) -> String {
     format!("with d = {d} a decoder can {}", choices.join(", or "))
 }
 
+/// `corrects N` and `detects M` as two requirements: each may hold alone while no decoder gives
+/// both.
+pub(super) fn not_at_once(court: &Court, compiled: &CompiledCode) -> Option<Finding> {
+    let mut corrected: Option<(usize, Span)> = None;
+    let mut detected: Option<(usize, Span)> = None;
+    for clause in &court.evaluator.declaration_of(compiled).clauses {
+        let ClauseKind::Requirement(requirement) = &clause.kind else {
+            continue;
+        };
+        let Condition::Phrase(parts) = &requirement.condition else {
+            continue;
+        };
+        let most = match phrases::pattern_of(parts).as_str() {
+            "corrects _" => &mut corrected,
+            "detects _" => &mut detected,
+            _ => continue,
+        };
+        let Some(PhrasePart::Operand(operand)) = parts.last() else {
+            continue;
+        };
+        let scope = compiled.scope.inside(&compiled.code);
+        if let Ok(Value::Integer(number)) = court.evaluator.evaluate(operand, &scope)
+            && let Some(number) = number.to_usize()
+            && most.is_none_or(|(known, _)| known < number)
+        {
+            *most = Some((number, requirement.span));
+        }
+    }
+    let ((corrected, first), (detected, second)) = (corrected?, detected?);
+    let d = court
+        .session
+        .distance_by(&compiled.code, Effort::Small)
+        .exact()?;
+    let alone = 2 * corrected < d && detected < d;
+    if !alone || detected <= corrected || corrected + detected < d {
+        return None;
+    }
+    Some(
+        Finding::new(
+            catalogue::NOT_AT_ONCE,
+            second,
+            format!(
+                "{}: a decoder that corrects {corrected} does not detect all {detected} errors as well",
+                compiled.title()
+            ),
+        )
+        .label(format!(
+            "alone this holds; with the other it takes d >= {}, and d = {d}",
+            corrected + detected + 1
+        ))
+        .related(first, "required here")
+        .help(together(d)),
+    )
+}
+
 /// Two sets of errors, the first of so many, that look alike.
 fn confusion(asked: &Asked, word: &[u32], errors: usize) -> String {
     let (positions, _) = support(word);
@@ -183,6 +243,14 @@ fn by_distance(
     let mut says = format!("d = {shown}, but {formula} = {needed} is needed");
     if let Some(word) = &distance.witness {
         says = format!("{says}: {}", story(asked, word));
+        let named: Vec<String> = support(word)
+            .0
+            .iter()
+            .map(|&at| asked.named(&[at]))
+            .collect();
+        if let Some(columns) = of_columns(&named, code.field().is_binary()) {
+            says = format!("{says}; {columns}");
+        }
     }
     let mut ruling = Ruling::new(Judgement::fails(says).witness(distance.witness));
     ruling.needed = Some(needed);

@@ -6,21 +6,32 @@
 
 mod claims;
 mod errors;
+mod layout;
+mod limits;
+mod miscorrection;
+mod numbers;
+mod patterns;
 mod phrases;
+mod promise;
 mod relations;
+mod storage;
 mod structure;
 
 pub use phrases::{Phrase, phrases};
 
 use crate::code::{Code, Distance};
 use crate::derive::{
-    Effort, Judgement, MEASURES, Session, SessionMeasures, Verdict, properties, support,
+    Effort, Judgement, MEASURES, Session, SessionMeasures, Verdict, channel::FIGURES,
+    channel::decimal, properties, support,
 };
 use crate::evaluate::{CompiledCode, Evaluator, Stop, position_names};
 use crate::finding::{Code as FindingCode, Finding, Related, catalogue, near_names};
 use crate::source::Span;
-use crate::syntax::tree::{ClauseKind, Condition, Expression, PhrasePart, Requirement, Strength};
-use crate::value::Value;
+use crate::syntax::tree::{
+    ClauseKind, Condition, Expression, ExpressionKind, PhrasePart, Requirement, Strength,
+};
+use crate::value::{Channel, Value};
+use num_rational::BigRational;
 
 /// What kind of clause was judged.
 #[derive(Clone, Copy, PartialEq, Eq, Debug, serde::Serialize)]
@@ -75,6 +86,42 @@ pub fn quantities() -> Vec<&'static str> {
         .collect()
 }
 
+/// The channels that a code's requirements name, as written, each once.
+pub fn channels(evaluator: &Evaluator, compiled: &CompiledCode) -> Vec<(String, Channel)> {
+    let mut found: Vec<(String, Channel)> = Vec::new();
+    let scope = compiled.scope.about(&compiled.code, Vec::new());
+    for clause in &evaluator.declaration_of(compiled).clauses {
+        let ClauseKind::Requirement(requirement) = &clause.kind else {
+            continue;
+        };
+        let Condition::Expression(expression) = &requirement.condition else {
+            continue;
+        };
+        let sides: Vec<&Expression> = match &expression.kind {
+            ExpressionKind::Binary(_, left, right) => vec![left, right],
+            _ => vec![expression],
+        };
+        for side in sides {
+            let ExpressionKind::Call {
+                function,
+                arguments,
+            } = &side.kind
+            else {
+                continue;
+            };
+            if let ([argument], true) = (
+                arguments.as_slice(),
+                FIGURES.contains(&function.text.as_str()),
+            ) && let Ok(Value::Channel(channel)) = evaluator.evaluate(&argument.value, &scope)
+                && !found.iter().any(|(_, known)| *known == channel)
+            {
+                found.push((evaluator.text(argument.value.span), channel));
+            }
+        }
+    }
+    found
+}
+
 impl Court<'_> {
     /// Judges every clause of a code.
     pub fn judge(&self, compiled: &CompiledCode) -> Verdicts {
@@ -90,6 +137,9 @@ impl Court<'_> {
                 ClauseKind::Bits(_) | ClauseKind::Note(_) => {}
             }
         }
+        verdicts
+            .findings
+            .extend(errors::not_at_once(self, compiled));
         verdicts
     }
 
@@ -113,6 +163,11 @@ impl Court<'_> {
             Err(Stop::Unsettled { name, lower, upper }) => Ruling::new(Judgement::undecided(
                 format!("{name} is only known to lie in {lower}..{upper}"),
             )),
+            Err(Stop::Enclosed { name, ends }) => Ruling::new(Judgement::undecided(format!(
+                "{name} is only known to lie between {} and {}",
+                decimal(&ends.0, false),
+                decimal(&ends.1, true)
+            ))),
         };
         if let Some(finding) = self.finding(compiled, requirement, &ruling) {
             verdicts.findings.push(finding);
@@ -145,10 +200,11 @@ impl Court<'_> {
         for part in parts {
             if let PhrasePart::Operand(expression) = part {
                 let scope = compiled.scope.inside(&compiled.code);
-                operands.push((
-                    self.evaluator.evaluate(expression, &scope)?,
-                    expression.span,
-                ));
+                let value = match layout::operand(self.evaluator, compiled, expression) {
+                    Some(groups) => groups?,
+                    None => self.evaluator.evaluate(expression, &scope)?,
+                };
+                operands.push((value, expression.span));
             }
         }
         (phrase.decide)(&Asked {
@@ -159,23 +215,44 @@ impl Court<'_> {
         })
     }
 
+    /// A comparison or a property: first with what theorems say of the distance, then after a
+    /// search.
+    fn expression(&self, compiled: &CompiledCode, expression: &Expression) -> Result<Ruling, Stop> {
+        self.measures.effort.set(Effort::Theorems);
+        let quick = self.weighed(compiled, expression);
+        self.measures.effort.set(Effort::Full);
+        match quick {
+            Ok(ruling) if ruling.judgement.verdict == Verdict::Undecided => {
+                self.weighed(compiled, expression)
+            }
+            Err(Stop::Enclosed { .. } | Stop::Unsettled { .. }) => {
+                self.weighed(compiled, expression)
+            }
+            settled => settled,
+        }
+    }
+
     /// A comparison or a property. A distance that is only known to lie in an interval is gone
     /// through value by value: the verdict stands when all agree.
-    fn expression(&self, compiled: &CompiledCode, expression: &Expression) -> Result<Ruling, Stop> {
+    fn weighed(&self, compiled: &CompiledCode, expression: &Expression) -> Result<Ruling, Stop> {
         self.measures.last.borrow_mut().take();
         let says = |holds: bool| self.grounds(compiled, expression, holds);
         match self.assumed(compiled, expression, Vec::new()) {
             Ok(holds) => {
                 let plain = self.measures.last.borrow_mut().take();
                 let judgement = match plain {
-                    Some(judgement) => Judgement {
-                        verdict: if holds {
+                    Some(judgement) => {
+                        let judgement = self.shown(compiled, expression, judgement);
+                        let verdict = if holds {
                             Verdict::Holds
                         } else {
                             Verdict::Fails
-                        },
-                        ..judgement
-                    },
+                        };
+                        Judgement {
+                            verdict,
+                            ..judgement
+                        }
+                    }
                     None => Judgement::of(holds, says(true), says(false)),
                 };
                 Ok(Ruling::new(judgement))
@@ -203,11 +280,93 @@ impl Court<'_> {
                     )),
                 }))
             }
+            Err(stop @ Stop::Enclosed { .. }) => self.enclosed(compiled, expression, stop),
             Err(Stop::Finding(finding)) if finding.code == catalogue::CLAIM_UNDECIDED => {
                 Ok(Ruling::new(Judgement::undecided(finding.message)))
             }
             Err(stop) => Err(stop),
         }
+    }
+
+    /// A property's judgement with the places that refute it named.
+    fn shown(
+        &self,
+        compiled: &CompiledCode,
+        expression: &Expression,
+        judgement: Judgement,
+    ) -> Judgement {
+        let (ExpressionKind::Name(name), Some(word), Verdict::Fails) =
+            (&expression.kind, &judgement.witness, judgement.verdict)
+        else {
+            return judgement;
+        };
+        let (positions, _) = support(word);
+        let named = position_names(compiled.position_names.as_deref(), &positions).join(", ");
+        let says = match (name.as_str(), positions.len()) {
+            ("mds", lost) => format!(
+                "{}: the {lost} symbols at {named}, no more than n - k = {}, cannot be recovered when they are lost",
+                judgement.says,
+                compiled.code.redundancy()
+            ),
+            (_, 1..=16) => format!("{}: a word lives at {named}", judgement.says),
+            _ => return judgement,
+        };
+        Judgement { says, ..judgement }
+    }
+
+    /// A comparison of numbers that are only known to lie between two fractions: it stands when
+    /// all of one side lies on the right side of all of the other.
+    fn enclosed(
+        &self,
+        compiled: &CompiledCode,
+        expression: &Expression,
+        stop: Stop,
+    ) -> Result<Ruling, Stop> {
+        let ExpressionKind::Binary(operator, left, right) = &expression.kind else {
+            return Err(stop);
+        };
+        let (one, one_says) = self.ends(compiled, left)?;
+        let (other, other_says) = self.ends(compiled, right)?;
+        let Some(verdict) = numbers::compared(*operator, &one, &other) else {
+            return Err(stop);
+        };
+        let says = [one_says, other_says]
+            .into_iter()
+            .flatten()
+            .collect::<Vec<_>>();
+        Ok(Ruling::new(Judgement {
+            verdict,
+            says: says.join(" and "),
+            witness: None,
+        }))
+    }
+
+    /// A number, or the two it lies between, with the grounds if it is a figure.
+    fn ends(
+        &self,
+        compiled: &CompiledCode,
+        side: &Expression,
+    ) -> Result<(numbers::Ends, Option<String>), Stop> {
+        self.measures.last.borrow_mut().take();
+        let scope = compiled.scope.about(&compiled.code, Vec::new());
+        let ends = match self.evaluator.evaluate(side, &scope) {
+            Ok(Value::Integer(number)) => {
+                let number = BigRational::from_integer(number);
+                (number.clone(), number)
+            }
+            Ok(Value::Rational(number)) => (number.clone(), number),
+            Err(Stop::Enclosed { ends, .. }) => *ends,
+            Ok(other) => {
+                return Err(Stop::Finding(Box::new(Finding::new(
+                    catalogue::WRONG_TYPE,
+                    side.span,
+                    format!("a number is compared here, not {}", other.kind()),
+                ))));
+            }
+            Err(stop) => return Err(stop),
+        };
+        let grounds = self.measures.last.borrow_mut().take();
+        Ok((ends, grounds.map(|judgement| judgement.says)))
     }
 
     fn assumed(
@@ -222,7 +381,6 @@ impl Court<'_> {
 
     /// The two sides of a comparison as they came out: `row_weight is 38, not <= 36`.
     fn grounds(&self, compiled: &CompiledCode, expression: &Expression, holds: bool) -> String {
-        use crate::syntax::tree::ExpressionKind;
         let scope = compiled.scope.about(&compiled.code, Vec::new());
         if let ExpressionKind::Binary(_, left, right) = &expression.kind
             && let (Ok(one), Ok(other)) = (
@@ -274,8 +432,11 @@ impl Court<'_> {
         let message = format!("{}: `{}` {verb}", compiled.title(), requirement.text);
         let mut label = ruling.judgement.says.clone();
         if let (None, Some(word)) = (ruling.needed, &ruling.judgement.witness) {
-            let shown = name_places(compiled, word);
-            label = format!("{label}, as the word on {shown} shows");
+            // Grounds that name positions themselves need no second list.
+            if !label.contains("(position ") && !label.contains(" position ") {
+                let shown = name_places(compiled, word);
+                label = format!("{label}, as the word on {shown} shows");
+            }
         }
         let mut finding = Finding::new(code, requirement.span, message).label(label);
         finding.help = ruling.help.clone();
@@ -420,6 +581,20 @@ impl Ruling {
             help: None,
             needed: None,
         }
+    }
+}
+
+/// What two or fewer columns of a check matrix make of a word that lives there.
+pub(crate) fn of_columns(named: &[String], binary: bool) -> Option<String> {
+    match named {
+        [one] => Some(format!("the column of {one} is zero: no check sees it")),
+        [one, other] if binary => Some(format!(
+            "the columns of {one} and {other} are equal: no check tells them apart"
+        )),
+        [one, other] => Some(format!(
+            "the columns of {one} and {other} are multiples of each other"
+        )),
+        _ => None,
     }
 }
 

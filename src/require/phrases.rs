@@ -1,6 +1,8 @@
 //! The phrases of the requirement vocabulary.
 
-use super::{Asked, Ruling, errors, relations, structure};
+use super::{
+    Asked, Ruling, errors, limits, miscorrection, patterns, relations, storage, structure,
+};
 use crate::evaluate::Stop;
 use crate::syntax::tree::PhrasePart;
 
@@ -16,9 +18,17 @@ pub struct Phrase {
 
 /// All phrases.
 pub fn phrases() -> impl Iterator<Item = &'static Phrase> {
-    [errors::PHRASES, structure::PHRASES, relations::PHRASES]
-        .into_iter()
-        .flatten()
+    [
+        errors::PHRASES,
+        patterns::PHRASES,
+        miscorrection::PHRASES,
+        storage::PHRASES,
+        structure::PHRASES,
+        limits::PHRASES,
+        relations::PHRASES,
+    ]
+    .into_iter()
+    .flatten()
 }
 
 /// The pattern of a phrase as written.

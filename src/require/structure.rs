@@ -2,7 +2,7 @@
 
 use super::{Asked, Phrase, Ruling};
 use crate::code::Space;
-use crate::derive::{Judgement, structure};
+use crate::derive::{Judgement, form, structure};
 use crate::evaluate::Stop;
 
 /// The phrases of this file.
@@ -26,6 +26,25 @@ pub const PHRASES: &[Phrase] = &[
         pattern: "balanced rows within _",
         says: "The row weights of the check matrix as built differ by at most N.",
         decide: balanced,
+    },
+    Phrase {
+        pattern: "divisible by _",
+        says: "Every weight is a multiple of N.",
+        decide: |asked| {
+            let by = asked.number(0)?;
+            let judgement = form::divisible(asked.court.session, asked.code(), by);
+            Ok(Ruling::new(judgement))
+        },
+    },
+    Phrase {
+        pattern: "quasi_cyclic of index _",
+        says: "A cyclic shift by N positions, or of each of N blocks of equal length by one, takes words to words.",
+        decide: |asked| {
+            Ok(Ruling::new(form::quasi_cyclic(
+                asked.code(),
+                asked.number(0)?,
+            )))
+        },
     },
 ];
 
