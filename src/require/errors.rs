@@ -129,11 +129,14 @@ fn together(d: usize) -> String {
     format!("with d = {d} a decoder can {}", choices.join(", or "))
 }
 
+/// A number of errors, and where it is required.
+type Stated = Option<(usize, Span)>;
+
 /// `corrects N` and `detects M` as two requirements: each may hold alone while no decoder gives
 /// both.
 pub(super) fn not_at_once(court: &Court, compiled: &CompiledCode) -> Option<Finding> {
-    let (mut corrected, mut detected): (Option<(usize, Span)>, Option<(usize, Span)>) =
-        (None, None);
+    let mut corrected: Stated = None;
+    let mut detected: Stated = None;
     for clause in &court.evaluator.declaration_of(compiled).clauses {
         let ClauseKind::Requirement(requirement) = &clause.kind else {
             continue;
