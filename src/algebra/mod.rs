@@ -11,8 +11,7 @@ pub mod matrix;
 pub mod numbers;
 pub mod polynomial;
 
-pub use field::embedding::Embedding;
-pub use field::{Element, Field, FieldError, format_polynomial};
+pub use field::{Basis, Element, Embedding, Field, FieldError, format_polynomial};
 pub use matrix::Matrix;
 pub use numbers::{factor_u64, is_prime, order_modulo, prime_power};
 pub use polynomial::Polynomial;

@@ -5,6 +5,7 @@
 //! extensions up to 2^24 multiply polynomials. See [`conway`] for the modulus taken when none is
 //! stated, and [`embedding`] for the way from a subfield up and back.
 
+pub mod basis;
 pub mod conway;
 pub mod embedding;
 mod format;
@@ -15,6 +16,8 @@ use std::fmt;
 use std::sync::{Arc, OnceLock};
 
 use super::numbers::{factor_u64, is_prime, pow_mod, reduce_order};
+pub use basis::Basis;
+pub use embedding::Embedding;
 pub use format::format_polynomial;
 use residues::{Residues, add_digits, least_factor, neg_digits};
 pub use tables::ByteTables;
