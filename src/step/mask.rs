@@ -2,7 +2,7 @@
 
 use super::{Step, carried::Carried};
 use crate::algebra::{Element, Field};
-use crate::code::{Code, Made};
+use crate::code::{Code, Made, weight};
 use crate::finding::{Found, catalogue};
 use crate::value::{Call, Value, needed};
 
@@ -36,7 +36,7 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
         None => word.clone(),
         Some(before) => sum(field, before, &word),
     };
-    let shown: Vec<String> = word.iter().map(Element::to_string).collect();
+    let shown = shown(&word);
     Ok(
         Made::new(field.clone(), code.length(), code.space().clone())
             .dimension(code.dimension())
@@ -47,11 +47,17 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
                 })
                 .cyclic(),
             )
-            .assuming(format!(
-                "the word {} is added to every word on the wire",
-                shown.join(" ")
-            )),
+            .assuming(format!("{shown} is added to every word on the wire")),
     )
+}
+
+/// A word as reports show it, a long one by its weight.
+fn shown(word: &[Element]) -> String {
+    if word.len() > 80 {
+        return format!("a stated word of weight {}", weight(word));
+    }
+    let entries: Vec<String> = word.iter().map(Element::to_string).collect();
+    format!("the word {}", entries.join(" "))
 }
 
 /// A word of the code's length: a list of elements, a vector, or a matrix of one row.
