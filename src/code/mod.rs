@@ -7,12 +7,14 @@
 mod arrange;
 mod cyclic;
 mod knowledge;
+mod weights;
 
 pub use arrange::{check_positions, information_positions};
 pub use cyclic::Cyclic;
 pub use knowledge::{
     Bound, Counts, Distance, Knowledge, NoRules, Rules, SameCode, Side, Weights, lower, upper,
 };
+pub use weights::{counted, listed, macwilliams};
 
 use crate::algebra::{Element, Field, Matrix};
 use crate::source::Span;
@@ -41,6 +43,7 @@ struct Body {
     length: usize,
     dimension: usize,
     space: Space,
+    offset: Option<Vec<Element>>,
     generator: OnceLock<Matrix>,
     check: OnceLock<Matrix>,
 }
@@ -101,6 +104,9 @@ pub struct Made {
     pub assumptions: Vec<String>,
     /// What was assumed because the spec leaves it open, if anything.
     pub unstated: Option<Unstated>,
+    /// The fixed word added to every word on the wire, of length n. A step on a masked code that
+    /// leaves it out does not know what becomes of the mask, and is refused.
+    pub offset: Option<Vec<Element>>,
 }
 
 impl Made {
@@ -133,7 +139,14 @@ impl Made {
             rules: Arc::new(NoRules),
             assumptions: Vec::new(),
             unstated: None,
+            offset: None,
         }
+    }
+
+    /// With the word that is added on the wire, when there is one.
+    pub fn masked(mut self, offset: Option<Vec<Element>>) -> Made {
+        self.offset = offset;
+        self
     }
 
     /// With the codes it was made from.
@@ -175,6 +188,7 @@ impl Code {
                 length: made.length,
                 dimension,
                 space: made.space,
+                offset: made.offset.filter(|word| weight(word) > 0),
                 generator: OnceLock::new(),
                 check: OnceLock::new(),
             }),
@@ -240,6 +254,12 @@ impl Code {
     /// The presentation as built.
     pub fn space(&self) -> &Space {
         &self.body.space
+    }
+
+    /// The fixed word, not zero, that is added to every word on the wire (`mask`). The code itself
+    /// stays linear: distance, weights and membership are those without it.
+    pub fn offset(&self) -> Option<&[Element]> {
+        self.body.offset.as_deref()
     }
 
     /// How the code came about.

@@ -32,6 +32,40 @@ impl Evaluator<'_> {
             .collect()
     }
 
+    /// As [`Evaluator::given`], but a word that a parameter takes is that word, although the code so
+    /// far may have a quantity of this name.
+    fn given_to_step(
+        &self,
+        parameters: &[crate::value::Parameter],
+        arguments: &[Argument],
+        scope: &Scope,
+    ) -> Outcome<Vec<Given>> {
+        let mut given = Vec::with_capacity(arguments.len());
+        for (place, argument) in arguments.iter().enumerate() {
+            let parameter = match &argument.name {
+                Some(name) => parameters.iter().find(|known| known.name == name.text),
+                None => parameters.get(place),
+            };
+            match &argument.value.kind {
+                ExpressionKind::Name(word)
+                    if scope.local(word).is_none()
+                        && parameter.is_some_and(|known| known.words.contains(&word.as_str())) =>
+                {
+                    given.push(Given {
+                        name: argument
+                            .name
+                            .as_ref()
+                            .map(|name| (name.text.clone(), name.span)),
+                        value: Value::Text(word.as_str().into()),
+                        span: argument.value.span,
+                    });
+                }
+                _ => given.extend(self.given(std::slice::from_ref(argument), scope)?),
+            }
+        }
+        Ok(given)
+    }
+
     /// `f(arguments)`
     pub(super) fn call(
         &self,
@@ -180,10 +214,9 @@ impl Evaluator<'_> {
             return Err(Stop::Finding(Box::new(finding)));
         };
         let inner = scope.inside(&before);
-        let given = self.given(&applied.arguments, &inner)?;
+        let given = self.given_to_step(entry.parameters, &applied.arguments, &inner)?;
         let call = self.bind(name, applied.span, entry.parameters, given, &inner)?;
-        let mut made = (entry.run)(&before, &call)?;
-        made.parents.insert(0, before);
+        let made = step::apply(entry, &before, &call)?;
         if made.length == 0 {
             return Err(wrong(
                 catalogue::SHAPE,

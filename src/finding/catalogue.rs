@@ -81,6 +81,7 @@ catalogue! {
     BAD_POSITIONS = "bad-positions", Error, Malformed, "A position does not exist in this code, or is named twice.";
     BAD_ROOTS = "bad-roots", Error, Malformed, "The stated roots or generator do not define a cyclic code of this length over this field.";
     BAD_POINTS = "bad-points", Error, Malformed, "Evaluation points or monomials are missing, repeated or do not fit together.";
+    MASK_LOST = "mask-lost", Error, Malformed, "A step does not say what becomes of the word that an earlier step adds on the wire.";
     SYMBOL_WIDTH = "symbol-width", Error, Malformed, "The inner code's dimension is not the number of digits of an outer symbol.";
     REDUNDANT_CHECKS = "redundant-checks", Advice, Remark, "The given check matrix has rows that are combinations of others, so k is larger than n minus the number of rows.";
     BAD_FILE_CONTENT = "bad-file-content", Error, Malformed, "A matrix file does not follow its format.";

@@ -29,6 +29,11 @@ code gauge_word over bit
 
 fn run(code: &Code, call: &Call) -> Found<Made> {
     let (row, ones) = expurgate::further_row(code, call)?;
+    Ok(with(code, row, ones))
+}
+
+/// The code with a further word; `ones` when it is the all-ones word over GF(2).
+pub(super) fn with(code: &Code, row: Vec<u32>, ones: bool) -> Made {
     let space = match code.space() {
         Space::Check(matrix) => Space::Check(positions::orthogonal_part(matrix, &row)),
         _ => Space::Span(positions::with_row(
@@ -37,7 +42,9 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
             &row,
         )),
     };
-    Ok(Made::new(code.field().clone(), code.length(), space).rules(Augmented { row, ones }))
+    Made::new(code.field().clone(), code.length(), space)
+        .masked(code.offset().map(<[u32]>::to_vec))
+        .rules(Augmented { row, ones })
 }
 
 struct Augmented {
@@ -88,5 +95,11 @@ impl Rules for Augmented {
             counts,
             says: format!("each word and its complement; before: {}", before.says),
         })
+    }
+
+    fn cyclic(&self, code: &Code, known: &dyn Knowledge) -> Option<String> {
+        let even = self.row.windows(2).all(|pair| pair[0] == pair[1]);
+        (even && known.cyclic(&code.origin().parents[0]))
+            .then(|| "a cyclic code and a word that shifts leave alone".into())
     }
 }

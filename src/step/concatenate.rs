@@ -1,10 +1,10 @@
 //! `concatenate`: each symbol encoded by an inner code.
 
-use super::{Step, image::digit};
+use super::{Step, image::Symbols, mask, product::too_large};
 use crate::algebra::{Element, Matrix};
 use crate::code::{Bound, Code, Knowledge, Made, Rules, lower};
 use crate::finding::{Found, catalogue};
-use crate::value::{Call, MATRIX_ENTRIES, needed};
+use crate::value::{Call, needed};
 
 /// The register's entry.
 pub const ENTRY: Step = Step {
@@ -12,9 +12,9 @@ pub const ENTRY: Step = Step {
     parameters: &[needed(
         "inner",
         "a code",
-        "over the prime field, of as many dimensions as a symbol has digits",
+        "over a subfield, of as many dimensions as a symbol has coordinates over it",
     )],
-    says: "Writes each symbol in the basis 1, a, a², … and encodes its digits by the inner code's generator matrix.",
+    says: "Writes each symbol in the basis 1, a, a², … and encodes its coordinates by the inner code's generator matrix.",
     theory: "n and k are the products, d is at least the product of the two distances (Forney, 1966; MacWilliams and Sloane, 1977, ch. 10 §11).",
     example: "\
 field octal = GF(8) where a^3 = a + 1
@@ -30,15 +30,14 @@ code gauge_frame
 fn run(code: &Code, call: &Call) -> Found<Made> {
     let inner = call.code("inner")?;
     let field = code.field();
-    let degree = field.degree() as usize;
-    if inner.field().order() != u64::from(field.characteristic()) {
+    let Some(embedding) = field.embedding_of(inner.field()) else {
         let message = format!(
-            "the inner code is over {}, but the symbols of {field} have digits in GF({})",
-            inner.field(),
-            field.characteristic()
+            "the inner code is over {}, which is no subfield of {field}",
+            inner.field()
         );
         return Err(call.wrong("inner", catalogue::FIELD_MISMATCH, message));
-    }
+    };
+    let degree = embedding.degree() as usize;
     if inner.dimension() != degree {
         let mut finding = call.wrong(
             "inner",
@@ -51,56 +50,61 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
         finding.help = Some(format!(
             "take an inner code of dimension {degree}, or an outer code over GF({}^{})",
             field.characteristic(),
-            inner.dimension()
+            inner.dimension() * inner.field().degree() as usize
         ));
         return Err(finding);
     }
-    let rows = code.dimension() * degree;
-    let length = code.length().saturating_mul(inner.length());
-    if rows.saturating_mul(length) > MATRIX_ENTRIES {
-        return Err(call.trouble(
-            catalogue::LIMIT,
-            "the concatenated generator matrix would be too large to build",
-        ));
-    }
-    let outer = code.generator_matrix();
-    let basis: Vec<Element> = (0..degree as u32)
-        .map(|at| field.characteristic().pow(at))
-        .collect();
-    let mut matrix = Matrix::zero(inner.field(), rows, length);
-    for row in 0..outer.rows() {
-        for (at, &scale) in basis.iter().enumerate() {
-            for (place, &entry) in outer.row(row).iter().enumerate() {
-                let symbol = field.mul(scale, entry);
-                for (offset, value) in encoded(inner, symbol, field.characteristic())
-                    .into_iter()
-                    .enumerate()
-                {
-                    if value != 0 {
-                        matrix.set(row * degree + at, place * inner.length() + offset, value);
-                    }
-                }
-            }
-        }
-    }
+    let rows = code.dimension().saturating_mul(degree);
+    too_large(call, rows, code.length().saturating_mul(inner.length()))?;
+    let mut symbols = Symbols::new(embedding.polynomial_basis());
+    let matrix = frames(&mut symbols, code.generator_matrix(), inner);
+    let offset = mask::paired(code, inner, |outer_word, inner_word| {
+        let repeated = inner_word.repeat(code.length());
+        let encoded: Vec<Element> = outer_word
+            .iter()
+            .flat_map(|&symbol| encoded(&mut symbols, symbol, inner))
+            .collect();
+        mask::sum(inner.field(), &encoded, &repeated)
+    });
     Ok(Made::span(matrix)
         .dimension(rows)
         .from([inner.clone()])
+        .masked(offset)
         .rules(Concatenated)
         .assuming(format!("symbols of {field} enter the inner code in the basis 1, a, a^2, …, by its generator matrix as built")))
 }
 
-fn encoded(inner: &Code, symbol: Element, characteristic: u32) -> Vec<Element> {
-    let field = inner.field();
-    let generator = inner.generator_matrix();
-    let mut word = vec![0; inner.length()];
-    for row in 0..generator.rows() {
-        let digit = digit(symbol, row, characteristic);
-        if digit != 0 {
-            for (entry, add) in word.iter_mut().zip(generator.row(row)) {
-                *entry = field.add(*entry, field.mul(digit, add));
+/// Each row of the outer generator matrix times each element of the basis, encoded.
+fn frames(symbols: &mut Symbols, outer: &Matrix, inner: &Code) -> Matrix {
+    let basis = symbols.basis().elements().to_vec();
+    let (degree, block) = (basis.len(), inner.length());
+    let mut matrix = Matrix::zero(
+        inner.field(),
+        outer.rows() * degree,
+        outer.columns() * block,
+    );
+    for row in 0..outer.rows() {
+        for (at, &scale) in basis.iter().enumerate() {
+            for (place, entry) in outer.nonzero(row) {
+                let symbol = outer.field().mul(scale, entry);
+                let word = encoded(symbols, symbol, inner);
+                for (offset, &value) in word.iter().enumerate() {
+                    matrix.set(row * degree + at, place * block + offset, value);
+                }
             }
         }
+    }
+    matrix
+}
+
+/// The inner word of a symbol.
+fn encoded(symbols: &mut Symbols, symbol: Element, inner: &Code) -> Vec<Element> {
+    let generator = inner.generator_matrix();
+    let mut word = vec![0; inner.length()];
+    for (row, &digit) in symbols.of(symbol).iter().enumerate() {
+        inner
+            .field()
+            .add_multiple(&mut word, digit, &generator.row(row));
     }
     word
 }

@@ -1,6 +1,6 @@
 //! `direct_sum`: the words (u | v).
 
-use super::{Step, product::same_field};
+use super::{Step, mask, product::same_field};
 use crate::algebra::Matrix;
 use crate::code::{Bound, Code, Counts, Knowledge, Made, Rules, Space, Weights, lower, upper};
 use crate::finding::Found;
@@ -38,6 +38,7 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
         Made::new(code.field().clone(), code.length() + other.length(), space)
             .dimension(code.dimension() + other.dimension())
             .from([other.clone()])
+            .masked(mask::paired(code, other, |u, v| [u, v].concat()))
             .rules(DirectSum),
     )
 }

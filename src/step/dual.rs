@@ -1,9 +1,14 @@
 //! `dual`: the words orthogonal to all of the code.
 
 use super::Step;
-use crate::code::{Bound, Code, Knowledge, Made, Rules, lower};
+use crate::code::{
+    Bound, Code, Knowledge, Made, Rules, Weights, counted, listed, lower, macwilliams,
+};
 use crate::finding::Found;
 use crate::value::Call;
+
+/// The longest code whose weights are transformed; the work grows as n³.
+const TRANSFORM_LENGTH: usize = 1024;
 
 /// The register's entry.
 pub const ENTRY: Step = Step {
@@ -23,11 +28,14 @@ code gauge_word over bit
 };
 
 fn run(code: &Code, _call: &Call) -> Found<Made> {
-    Ok(
-        Made::new(code.field().clone(), code.length(), code.dual_space())
-            .dimension(code.redundancy())
-            .rules(Dual),
-    )
+    Ok(dual(code))
+}
+
+/// The dual of a code.
+pub(super) fn dual(code: &Code) -> Made {
+    Made::new(code.field().clone(), code.length(), code.dual_space())
+        .dimension(code.redundancy())
+        .rules(Dual)
 }
 
 struct Dual;
@@ -48,6 +56,20 @@ impl Rules for Dual {
             "mds-dual",
             format!("the dual of an MDS code is MDS, so d is k + 1 = {value} of the code before"),
         )]
+    }
+
+    fn weights(&self, code: &Code, known: &dyn Knowledge) -> Option<Weights> {
+        let parent = &code.origin().parents[0];
+        let (n, k, q) = (parent.length(), parent.dimension(), code.field().order());
+        if n > TRANSFORM_LENGTH {
+            return None;
+        }
+        let before = known.weights(parent)?;
+        let counts = macwilliams(&listed(&before.counts, n), q, n, k)?;
+        Some(Weights {
+            counts: counted(counts),
+            says: format!("MacWilliams, from the code before: {}", before.says),
+        })
     }
 
     fn cyclic(&self, code: &Code, known: &dyn Knowledge) -> Option<String> {

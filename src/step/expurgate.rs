@@ -36,7 +36,10 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
             &row,
         )),
     };
-    Ok(Made::new(code.field().clone(), code.length(), space).rules(Expurgated { even }))
+    let level = row.windows(2).all(|pair| pair[0] == pair[1]);
+    Ok(Made::new(code.field().clone(), code.length(), space)
+        .masked(code.offset().map(<[u32]>::to_vec))
+        .rules(Expurgated { even, level }))
 }
 
 /// The row given as `with`, or all ones; and whether it is the all-ones row over GF(2).
@@ -60,6 +63,8 @@ pub(super) fn further_row(code: &Code, call: &Call) -> Found<(Vec<u32>, bool)> {
 
 struct Expurgated {
     even: bool,
+    /// Whether all entries of the check are equal.
+    level: bool,
 }
 
 impl Rules for Expurgated {
@@ -95,5 +100,10 @@ impl Rules for Expurgated {
             counts,
             says: format!("the even weights of the code before: {}", before.says),
         })
+    }
+
+    fn cyclic(&self, code: &Code, known: &dyn Knowledge) -> Option<String> {
+        (self.level && known.cyclic(&code.origin().parents[0]))
+            .then(|| "a cyclic code and a check that shifts leave alone".into())
     }
 }

@@ -1,7 +1,7 @@
 //! `extend`: append an overall check.
 
-use super::{Step, positions};
-use crate::algebra::Matrix;
+use super::{Step, mask, positions};
+use crate::algebra::{Element, Field, Matrix};
 use crate::code::{
     Bound, Code, Counts, Knowledge, Made, Rules, Space, Weights, lower, upper, weight,
 };
@@ -27,6 +27,11 @@ code gauge_word over bit
 };
 
 fn run(code: &Code, _call: &Call) -> Found<Made> {
+    Ok(extended(code))
+}
+
+/// The code with an overall check; of what is sent, mask included.
+pub(super) fn extended(code: &Code) -> Made {
     let field = code.field().clone();
     let length = code.length();
     let space = match code.space() {
@@ -37,9 +42,17 @@ fn run(code: &Code, _call: &Call) -> Found<Made> {
         }
         Space::Cyclic(_) => Space::Span(summed(code.generator_matrix())),
     };
-    Ok(Made::new(field, length + 1, space)
+    let offset = mask::moved(code, |word| checked_word(&field, word));
+    Made::new(field, length + 1, space)
         .dimension(code.dimension())
-        .rules(Extended))
+        .masked(offset)
+        .rules(Extended)
+}
+
+/// A word and the symbol that makes its sum zero.
+fn checked_word(field: &Field, word: &[Element]) -> Vec<Element> {
+    let sum = word.iter().fold(0, |sum, &entry| field.add(sum, entry));
+    [word, &[field.neg(sum)]].concat()
 }
 
 fn checked(matrix: &Matrix) -> Matrix {
@@ -78,10 +91,7 @@ impl Rules for Extended {
             bounds.extend(before.carried_lower("an appended check keeps it"));
         }
         if let Some(word) = before.witness {
-            let field = code.field();
-            let sum = word.iter().fold(0, |sum, &entry| field.add(sum, entry));
-            let mut word = word;
-            word.push(field.neg(sum));
+            let word = checked_word(code.field(), &word);
             bounds.push(upper(
                 weight(&word),
                 "extension",

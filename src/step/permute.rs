@@ -1,7 +1,7 @@
 //! `permute`: another order of positions.
 
-use super::Step;
-use crate::code::{Bound, Code, Knowledge, Made, Rules, Space, Weights};
+use super::{Step, carried::Carried, mask};
+use crate::code::{Code, Made, Space};
 use crate::finding::{Found, catalogue};
 use crate::value::{Call, needed};
 
@@ -82,36 +82,6 @@ pub(super) fn reordered(code: &Code, order: Vec<usize>, says: &'static str) -> M
     };
     Made::new(code.field().clone(), code.length(), space)
         .dimension(code.dimension())
-        .rules(Reordered { order, says })
-}
-
-struct Reordered {
-    order: Vec<usize>,
-    says: &'static str,
-}
-
-impl Rules for Reordered {
-    fn distance(&self, code: &Code, known: &dyn Knowledge) -> Vec<Bound> {
-        let before = known.distance(&code.origin().parents[0]);
-        if before.lower == 0 {
-            return Vec::new();
-        }
-        before
-            .grounds
-            .into_iter()
-            .map(|bound| {
-                let word = bound.witness.clone();
-                let moved = word.map(|word| self.order.iter().map(|&at| word[at]).collect());
-                bound.carried(self.says).witness(moved)
-            })
-            .collect()
-    }
-
-    fn weights(&self, code: &Code, known: &dyn Knowledge) -> Option<Weights> {
-        let before = known.weights(&code.origin().parents[0])?;
-        Some(Weights {
-            says: format!("{}: {}", self.says, before.says),
-            ..before
-        })
-    }
+        .masked(mask::moved(code, |word| mask::at(word, &order)))
+        .rules(Carried::new(says, move |word| mask::at(word, &order)))
 }

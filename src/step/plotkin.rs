@@ -1,6 +1,6 @@
 //! `plotkin`: the words (u | u + v).
 
-use super::{Step, product::same_field};
+use super::{Step, mask, product::same_field};
 use crate::algebra::Matrix;
 use crate::code::{Bound, Code, Distance, Knowledge, Made, Rules, lower, upper};
 use crate::finding::{Found, catalogue};
@@ -43,6 +43,9 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
     Ok(Made::span(top.above(&bottom))
         .dimension(code.dimension() + other.dimension())
         .from([other.clone()])
+        .masked(mask::paired(code, other, |u, v| {
+            [u, &mask::sum(code.field(), u, v)].concat()
+        }))
         .rules(Plotkin))
 }
 

@@ -3,7 +3,7 @@
 use super::Step;
 use crate::code::{Bound, Code, Knowledge, Made, Rules, lower, upper};
 use crate::finding::{Found, catalogue};
-use crate::value::{CODE_LENGTH, Call, needed};
+use crate::value::{CODE_LENGTH, Call, MATRIX_ENTRIES, needed};
 
 /// The register's entry.
 pub const ENTRY: Step = Step {
@@ -28,19 +28,35 @@ code gauge_page over bit
 fn run(code: &Code, call: &Call) -> Found<Made> {
     let other = call.code("with")?;
     same_field(code, other, call, "with")?;
-    let length = code.length().saturating_mul(other.length());
-    let entries = length.saturating_mul(code.dimension() * other.dimension());
-    if length > CODE_LENGTH || entries > crate::value::MATRIX_ENTRIES {
-        return Err(call.trouble(
-            catalogue::LIMIT,
-            format!("the product would have {length} positions, too many to build"),
-        ));
-    }
+    too_large(
+        call,
+        code.dimension().saturating_mul(other.dimension()),
+        code.length().saturating_mul(other.length()),
+    )?;
     let matrix = code.generator_matrix().kronecker(other.generator_matrix());
     Ok(Made::span(matrix)
         .dimension(code.dimension() * other.dimension())
         .from([other.clone()])
         .rules(Product))
+}
+
+/// That a code of so many positions, given by a matrix of so many rows, is small enough to build.
+pub(super) fn too_large(call: &Call, rows: usize, length: usize) -> Found<()> {
+    if length > CODE_LENGTH {
+        let message = format!(
+            "`{}` would give a code of {length} positions, more than the {CODE_LENGTH} one may have",
+            call.name
+        );
+        return Err(call.trouble(catalogue::LIMIT, message));
+    }
+    if rows.saturating_mul(length) > MATRIX_ENTRIES {
+        let message = format!(
+            "`{}` would give a matrix of {rows} rows and {length} columns, too large to build",
+            call.name
+        );
+        return Err(call.trouble(catalogue::LIMIT, message));
+    }
+    Ok(())
 }
 
 /// That two codes share a field.

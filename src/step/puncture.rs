@@ -1,9 +1,12 @@
 //! `puncture`: leave positions out of every word.
 
-use super::{Step, positions};
+use super::{Step, mask, positions};
 use crate::code::{Bound, Code, Knowledge, Made, Rules, lower, upper, weight};
 use crate::finding::Found;
 use crate::value::Call;
+
+/// The most entries that are looked at to find the shift that loses most.
+const SHIFT_WORK: usize = 1 << 26;
 
 /// The register's entry.
 pub const ENTRY: Step = Step {
@@ -11,7 +14,8 @@ pub const ENTRY: Step = Step {
     parameters: positions::PARAMETERS,
     says: "Leaves the named positions out of every word: a generator matrix loses those columns.",
     theory: "d falls by at most the number of positions (MacWilliams and Sloane, 1977, ch. 1 §9); \
-             k falls only when a word lives on the positions left out.",
+             k falls only when a word lives on the positions left out. A word of a cyclic code has a shift \
+             that is non-zero at a given position, so there one position always costs one.",
     example: "\
 field bit = GF(2)
 code gauge_word over bit
@@ -25,17 +29,37 @@ code gauge_word over bit
 
 fn run(code: &Code, call: &Call) -> Found<Made> {
     let positions = positions::positions(code, call)?;
-    let kept = positions::others(code.length(), &positions);
-    Ok(Made::new(
+    Ok(without(code, &positions))
+}
+
+/// The code without these positions (ascending).
+pub(super) fn without(code: &Code, positions: &[usize]) -> Made {
+    let kept = positions::others(code.length(), positions);
+    Made::new(
         code.field().clone(),
         kept.len(),
-        positions::punctured(code, &positions),
+        positions::punctured(code, positions),
     )
-    .rules(Punctured { kept }))
+    .masked(mask::moved(code, |word| mask::at(word, &kept)))
+    .rules(Punctured { kept })
 }
 
 struct Punctured {
     kept: Vec<usize>,
+}
+
+impl Punctured {
+    /// What is left of a word, or of its shift that keeps the least.
+    fn lightest(&self, word: &[u32], shifts: bool) -> Vec<u32> {
+        let n = word.len();
+        let shifted = |by: usize| -> Vec<u32> {
+            let kept = self.kept.iter();
+            kept.map(|&at| word[(at + by) % n]).collect()
+        };
+        let count = if shifts && n * n <= SHIFT_WORK { n } else { 1 };
+        let least = (0..count).min_by_key(|&by| weight(&shifted(by)));
+        shifted(least.unwrap_or(0))
+    }
 }
 
 impl Rules for Punctured {
@@ -54,8 +78,9 @@ impl Rules for Punctured {
                 ),
             ));
         }
+        let shifts = lost > 0 && before.lower > lost && known.cyclic(parent);
         if let Some(word) = before.witness {
-            let word: Vec<u32> = self.kept.iter().map(|&at| word[at]).collect();
+            let word = self.lightest(&word, shifts);
             let left = weight(&word);
             if left > 0 {
                 bounds.push(upper(
@@ -65,6 +90,19 @@ impl Rules for Punctured {
                     Some(word),
                 ));
             }
+        } else if shifts {
+            // Over all n shifts, a word of weight w is non-zero w times at each position.
+            let hit = (lost * before.upper).div_ceil(parent.length());
+            bounds.push(upper(
+                before.upper - hit,
+                "puncturing",
+                format!(
+                    "of the shifts of a word of weight at most {} one loses at least its share, {lost} in {}",
+                    before.upper,
+                    parent.length()
+                ),
+                None,
+            ));
         }
         bounds
     }

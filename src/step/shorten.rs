@@ -1,6 +1,6 @@
 //! `shorten`: keep the words that are zero in some positions, and leave those out.
 
-use super::{Step, positions};
+use super::{Step, mask, positions};
 use crate::code::{Bound, Code, Knowledge, Made, Rules, Space};
 use crate::finding::Found;
 use crate::value::Call;
@@ -30,6 +30,9 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
         code.length() - positions.len(),
         positions::shortened(code, &positions),
     )
+    .masked(mask::moved(code, |word| {
+        mask::at(word, &positions::others(code.length(), &positions))
+    }))
     .rules(Shortened);
     let neighbours = positions.windows(2).all(|pair| pair[1] == pair[0] + 1);
     if matches!(code.space(), Space::Cyclic(_)) && neighbours && positions.len() <= code.dimension()

@@ -18,6 +18,8 @@ pub struct Parameter {
     pub takes: &'static str,
     /// Whether it may be left out.
     pub optional: bool,
+    /// Words that are values here by themselves, whatever else they mean elsewhere.
+    pub words: &'static [&'static str],
     /// What it means.
     pub says: &'static str,
 }
@@ -28,6 +30,7 @@ pub const fn needed(name: &'static str, takes: &'static str, says: &'static str)
         name,
         takes,
         optional: false,
+        words: &[],
         says,
     }
 }
@@ -38,7 +41,15 @@ pub const fn optional(name: &'static str, takes: &'static str, says: &'static st
         name,
         takes,
         optional: true,
+        words: &[],
         says,
+    }
+}
+
+impl Parameter {
+    /// A parameter that also takes some words of its own.
+    pub const fn or_words(self, words: &'static [&'static str]) -> Parameter {
+        Parameter { words, ..self }
     }
 }
 
