@@ -196,8 +196,15 @@ impl<'a> Search<'a> {
 
     /// What follows from n, k and the divisor alone.
     fn bound_by_size(&mut self) {
-        self.raise(self.settled.lower.max(1), "divisor", String::new);
-        self.settled.says.retain(|ground| !ground.says.is_empty());
+        let least = self.settled.lower.max(1);
+        match self.divisor {
+            1 => self.raise(least, "linear", || {
+                "a non-zero word has weight at least 1".to_string()
+            }),
+            divisor => self.raise(least, "divisor", || {
+                format!("every weight is a multiple of {divisor}")
+            }),
+        }
         let singleton = self.n - self.k + 1;
         if singleton < self.settled.upper {
             self.settled.upper = singleton;
