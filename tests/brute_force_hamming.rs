@@ -38,8 +38,18 @@ fn relatives(q: u32, r: usize) {
     agree(q, &format!("simplex({r})"), &simplex);
     agree(q, &format!("hamming({r}) then extend"), &hamming.extend());
     agree(q, &format!("simplex({r}) then extend"), &simplex.extend());
-    agree(q, &format!("hamming({r}) then puncture(last: 1)"), &hamming.puncture(&[n - 1]));
-    agree(q, &format!("hamming({r}) then shorten(first: 1)"), &hamming.shorten(&[0]));
+    if n > 1 {
+        agree(
+            q,
+            &format!("hamming({r}) then puncture(last: 1)"),
+            &hamming.puncture(&[n - 1]),
+        );
+        agree(
+            q,
+            &format!("hamming({r}) then shorten(first: 1)"),
+            &hamming.shorten(&[0]),
+        );
+    }
     agree(
         q,
         &format!("hamming({r}) then extend then dual"),

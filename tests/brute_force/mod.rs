@@ -3,8 +3,11 @@
 
 #![allow(dead_code)]
 
+pub mod compose;
+
 use std::collections::{BTreeMap, BTreeSet, HashSet};
 use std::sync::Arc;
+
 
 pub type Word = Vec<u32>;
 
@@ -15,8 +18,9 @@ pub struct Field {
     pub m: u32,
     /// a^m as an element.
     power: u32,
-    /// Products, row by row.
-    table: Vec<u32>,
+    /// Products and sums, row by row, so that each is worked out once.
+    products: Vec<u32>,
+    sums: Vec<u32>,
 }
 
 impl Field {
@@ -26,16 +30,14 @@ impl Field {
             p,
             m,
             power,
-            table: Vec::new(),
+            products: Vec::new(),
+            sums: Vec::new(),
         };
-        let q = field.q();
-        let mut table = Vec::new();
-        for left in 0..q {
-            for right in 0..q {
-                table.push(field.long_product(left, right));
-            }
-        }
-        field.table = table;
+        let pairs = |of: &dyn Fn(u32, u32) -> u32, q: u32| -> Vec<u32> {
+            (0..q * q).map(|at| of(at / q, at % q)).collect()
+        };
+        field.sums = pairs(&|left, right| field.long_sum(left, right), field.q());
+        field.products = pairs(&|left, right| field.long_product(left, right), field.q());
         Arc::new(field)
     }
 
@@ -70,6 +72,10 @@ impl Field {
     }
 
     pub fn add(&self, left: u32, right: u32) -> u32 {
+        self.sums[(left * self.q() + right) as usize]
+    }
+
+    fn long_sum(&self, left: u32, right: u32) -> u32 {
         let sum: Vec<u32> = self
             .digits(left)
             .iter()
@@ -115,7 +121,7 @@ impl Field {
     }
 
     pub fn mul(&self, left: u32, right: u32) -> u32 {
-        self.table[(left * self.q() + right) as usize]
+        self.products[(left * self.q() + right) as usize]
     }
 
     pub fn inv(&self, element: u32) -> u32 {
