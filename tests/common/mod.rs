@@ -36,68 +36,99 @@ pub fn findings(text: &str) -> Vec<Finding> {
     with_spec(text, |view| view.findings)
 }
 
+/// What is asked of a code beside n, k and d.
+#[derive(Clone, Copy)]
+pub struct Asked<'a> {
+    pub weights: bool,
+    /// Properties and measures by name; all that are cheap when `None`.
+    pub names: Option<&'a [&'a str]>,
+}
+
 /// All that is compared of one code.
 pub fn examine(text: &str, name: &str) -> Known {
-    with_spec(text, |view| {
-        let findings: Vec<String> = view
-            .findings
-            .iter()
-            .map(|finding| finding.message.clone())
-            .collect();
-        let Some(checked) = view
-            .codes
-            .iter()
-            .find(|checked| checked.compiled.name == name)
-        else {
-            panic!("{name} was not built:\n{text}\n{findings:#?}");
-        };
-        let code = &checked.compiled.code;
-        let distance = view.session.distance_by(code, Effort::Full);
-        let weights = view.session.weights_by(code, Effort::Full).map(|weights| {
+    let all = Asked {
+        weights: true,
+        names: None,
+    };
+    examine_only(text, name, all)
+}
+
+/// Of one code, what is asked for; the rest is left out, as it may cost much.
+pub fn examine_only(text: &str, name: &str, asked: Asked) -> Known {
+    with_spec(text, |view| known(&view, name, asked, text))
+}
+
+/// What a view knows of one of its codes.
+pub fn known(view: &View, name: &str, asked: Asked, text: &str) -> Known {
+    let findings: Vec<String> = view
+        .findings
+        .iter()
+        .map(|finding| finding.message.clone())
+        .collect();
+    let Some(checked) = view
+        .codes
+        .iter()
+        .find(|checked| checked.compiled.name == name)
+    else {
+        panic!("{name} was not built:\n{text}\n{findings:#?}");
+    };
+    let wanted = |name: &str| asked.names.is_none_or(|names| names.contains(&name));
+    let code = &checked.compiled.code;
+    let distance = view.session.distance_by(code, Effort::Full);
+    let weights = asked
+        .weights
+        .then(|| view.session.weights_by(code, Effort::Full))
+        .flatten()
+        .map(|weights| {
             weights
                 .counts
                 .into_iter()
                 .map(|(weight, count)| (weight, count.to_string()))
                 .collect()
         });
-        let properties = properties::PROPERTIES
-            .iter()
-            .map(|property| {
-                (
-                    property.name.to_string(),
-                    (property.decide)(view.session, code),
-                )
-            })
-            .filter(|(_, judgement)| judgement.verdict != Verdict::Undecided)
-            .map(|(name, judgement)| (name, judgement.verdict == Verdict::Holds))
-            .collect();
-        let mut measures = BTreeMap::new();
-        if let Some(radius) = view.session.covering_radius(code) {
-            measures.insert("covering_radius".to_string(), radius);
+    let properties = properties::PROPERTIES
+        .iter()
+        .filter(|property| wanted(property.name))
+        .map(|property| {
+            (
+                property.name.to_string(),
+                (property.decide)(view.session, code),
+            )
+        })
+        .filter(|(_, judgement)| judgement.verdict != Verdict::Undecided)
+        .map(|(name, judgement)| (name, judgement.verdict == Verdict::Holds))
+        .collect();
+    Known {
+        n: code.length(),
+        k: code.dimension(),
+        d: (distance.lower, distance.upper),
+        weights,
+        properties,
+        measures: measures(view, code, wanted),
+        findings,
+    }
+}
+
+fn measures(
+    view: &View,
+    code: &cosetta::code::Code,
+    wanted: impl Fn(&str) -> bool,
+) -> BTreeMap<String, usize> {
+    let mut measures = BTreeMap::new();
+    let mut add = |name: &str, value: &dyn Fn() -> Option<usize>| {
+        if wanted(name)
+            && let Some(value) = value()
+        {
+            measures.insert(name.to_string(), value);
         }
-        let check = structure::check_matrix(code);
-        if check.columns() < 2000 {
-            let most = |weights: Vec<usize>| weights.into_iter().max().unwrap_or(0);
-            measures.insert(
-                "row_weight".to_string(),
-                most(structure::row_weights(check)),
-            );
-            measures.insert(
-                "column_weight".to_string(),
-                most(structure::column_weights(check)),
-            );
-            if let Ok(Some(girth)) = structure::girth(check) {
-                measures.insert("girth".to_string(), girth);
-            }
-        }
-        Known {
-            n: code.length(),
-            k: code.dimension(),
-            d: (distance.lower, distance.upper),
-            weights,
-            properties,
-            measures,
-            findings,
-        }
-    })
+    };
+    let most = |weights: Vec<usize>| weights.into_iter().max();
+    let check = || structure::check_matrix(code);
+    add("covering_radius", &|| view.session.covering_radius(code));
+    add("row_weight", &|| most(structure::row_weights(check())));
+    add("column_weight", &|| {
+        most(structure::column_weights(check()))
+    });
+    add("girth", &|| structure::girth(check()).ok().flatten());
+    measures
 }
