@@ -2,7 +2,6 @@
 //! hold, the broken specs are refused for the one mistake each has, and no page shows anything
 //! that the compiler does not say.
 
-use cosetta::construct;
 use cosetta::derive::Verdict;
 use cosetta::derive::search::Quiet;
 use cosetta::finding::{Class, render};
@@ -10,7 +9,6 @@ use cosetta::project::{self, Options, View};
 use cosetta::report::describe::describe;
 use cosetta::report::model::Report;
 use cosetta::source::{LoadError, Loader};
-use cosetta::step;
 use std::path::{Path, PathBuf};
 
 /// Reads what a spec names, beside the spec.
@@ -183,34 +181,6 @@ fn stem(name: &str) -> &str {
         .next()
         .and_then(|name| name.strip_suffix(".coset"))
         .unwrap_or(name)
-}
-
-#[test]
-fn the_example_of_every_construction_step_and_function_holds() {
-    let constructions = construct::CONSTRUCTIONS
-        .iter()
-        .map(|entry| (entry.name, entry.example));
-    let steps = step::STEPS.iter().map(|entry| (entry.name, entry.example));
-    let functions = construct::functions::all().map(|entry| (entry.name, entry.example));
-    let mut failing = Vec::new();
-    for (name, example) in constructions.chain(steps).chain(functions) {
-        let file = (format!("{name}.coset"), example.to_string());
-        run(std::slice::from_ref(&file), |view| {
-            let judged: usize = view
-                .codes
-                .iter()
-                .map(|checked| checked.verdicts.clauses.len())
-                .sum();
-            if project::class(&view.findings) != Class::Remark {
-                failing.push(rendered(&view));
-            } else if judged == 0 {
-                failing.push(format!("the example of {name} claims nothing"));
-            } else if !example.contains(name) {
-                failing.push(format!("the example of {name} does not show it"));
-            }
-        });
-    }
-    assert!(failing.is_empty(), "{}", failing.join("\n"));
 }
 
 /// The blocks of a page fenced with this word, each with the number of its first line.

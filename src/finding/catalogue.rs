@@ -74,7 +74,6 @@ catalogue! {
     FIELD_UNSTATED = "field-unstated", Error, Malformed, "It does not follow from the spec which field is meant here.";
     UNSTATED_MODULUS = "unstated-modulus", Advice, Remark, "The field's modulus is not stated; the Conway polynomial is assumed. Another choice gives other matrices.";
     UNSTATED_ROOT_FIELD = "unstated-root-field", Advice, Remark, "The field in which the roots of a cyclic code are named is not stated; another choice may give another code.";
-    UNSTATED_CONVENTION = "unstated-convention", Advice, Remark, "A delivered file depends on a convention that the spec leaves open.";
 
     // Constructions and steps.
     SHAPE = "shape", Error, Malformed, "Matrices, positions or lengths do not fit together.";
