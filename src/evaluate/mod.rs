@@ -8,6 +8,7 @@
 mod calls;
 mod clauses;
 mod codes;
+mod declared;
 mod expression;
 mod families;
 mod fields;

@@ -4,8 +4,10 @@
 //! In: compiled codes and a session. Out: [`Judged`] clauses for reports, and findings for what
 //! fails or stays open. One file a group of requirements, one line each in its register.
 
+mod asked;
 mod claims;
 mod errors;
+mod expressions;
 mod layout;
 mod limits;
 mod miscorrection;
@@ -17,6 +19,7 @@ mod relations;
 mod storage;
 mod structure;
 
+pub use asked::{Asked, Ruling};
 pub use phrases::{Phrase, phrases};
 
 use crate::code::{Code, Distance};
@@ -31,7 +34,6 @@ use crate::syntax::tree::{
     ClauseKind, Condition, Expression, ExpressionKind, PhrasePart, Requirement, Strength,
 };
 use crate::value::{Channel, Value};
-use num_rational::BigRational;
 
 /// What kind of clause was judged.
 #[derive(Clone, Copy, PartialEq, Eq, Debug, serde::Serialize)]
@@ -215,197 +217,6 @@ impl Court<'_> {
         })
     }
 
-    /// A comparison or a property: first with what theorems say of the distance, then after a
-    /// search.
-    fn expression(&self, compiled: &CompiledCode, expression: &Expression) -> Result<Ruling, Stop> {
-        self.measures.effort.set(Effort::Theorems);
-        let quick = self.weighed(compiled, expression);
-        self.measures.effort.set(Effort::Full);
-        match quick {
-            Ok(ruling) if ruling.judgement.verdict == Verdict::Undecided => {
-                self.weighed(compiled, expression)
-            }
-            Err(Stop::Enclosed { .. } | Stop::Unsettled { .. }) => {
-                self.weighed(compiled, expression)
-            }
-            settled => settled,
-        }
-    }
-
-    /// A comparison or a property. A distance that is only known to lie in an interval is gone
-    /// through value by value: the verdict stands when all agree.
-    fn weighed(&self, compiled: &CompiledCode, expression: &Expression) -> Result<Ruling, Stop> {
-        self.measures.last.borrow_mut().take();
-        let says = |holds: bool| self.grounds(compiled, expression, holds);
-        match self.assumed(compiled, expression, Vec::new()) {
-            Ok(holds) => {
-                let plain = self.measures.last.borrow_mut().take();
-                let judgement = match plain {
-                    Some(judgement) => {
-                        let judgement = self.shown(compiled, expression, judgement);
-                        let verdict = if holds {
-                            Verdict::Holds
-                        } else {
-                            Verdict::Fails
-                        };
-                        Judgement {
-                            verdict,
-                            ..judgement
-                        }
-                    }
-                    None => Judgement::of(holds, says(true), says(false)),
-                };
-                Ok(Ruling::new(judgement))
-            }
-            Err(Stop::Unsettled { name, lower, upper }) => {
-                let mut seen = [false; 2];
-                for value in lower..=upper {
-                    let holds = self.assumed(
-                        compiled,
-                        expression,
-                        vec![(name.clone(), Value::integer(value))],
-                    )?;
-                    seen[usize::from(holds)] = true;
-                }
-                let interval = format!("{name} lies in {lower}..{upper}");
-                Ok(Ruling::new(match seen {
-                    [false, true] => {
-                        Judgement::holds(format!("{interval}, and it holds for each of these"))
-                    }
-                    [true, false] => {
-                        Judgement::fails(format!("{interval}, and it fails for each of these"))
-                    }
-                    _ => Judgement::undecided(format!(
-                        "{interval}, and only some of these satisfy it"
-                    )),
-                }))
-            }
-            Err(stop @ Stop::Enclosed { .. }) => self.enclosed(compiled, expression, stop),
-            Err(Stop::Finding(finding)) if finding.code == catalogue::CLAIM_UNDECIDED => {
-                Ok(Ruling::new(Judgement::undecided(finding.message)))
-            }
-            Err(stop) => Err(stop),
-        }
-    }
-
-    /// A property's judgement with the places that refute it named.
-    fn shown(
-        &self,
-        compiled: &CompiledCode,
-        expression: &Expression,
-        judgement: Judgement,
-    ) -> Judgement {
-        let (ExpressionKind::Name(name), Some(word), Verdict::Fails) =
-            (&expression.kind, &judgement.witness, judgement.verdict)
-        else {
-            return judgement;
-        };
-        let (positions, _) = support(word);
-        let named = position_names(compiled.position_names.as_deref(), &positions).join(", ");
-        let says = match (name.as_str(), positions.len()) {
-            ("mds", lost) => format!(
-                "{}: the {lost} symbols at {named}, no more than n - k = {}, cannot be recovered when they are lost",
-                judgement.says,
-                compiled.code.redundancy()
-            ),
-            (_, 1..=16) => format!("{}: a word lives at {named}", judgement.says),
-            _ => return judgement,
-        };
-        Judgement { says, ..judgement }
-    }
-
-    /// A comparison of numbers that are only known to lie between two fractions: it stands when
-    /// all of one side lies on the right side of all of the other.
-    fn enclosed(
-        &self,
-        compiled: &CompiledCode,
-        expression: &Expression,
-        stop: Stop,
-    ) -> Result<Ruling, Stop> {
-        let ExpressionKind::Binary(operator, left, right) = &expression.kind else {
-            return Err(stop);
-        };
-        let (one, one_says) = self.ends(compiled, left)?;
-        let (other, other_says) = self.ends(compiled, right)?;
-        let Some(verdict) = numbers::compared(*operator, &one, &other) else {
-            return Err(stop);
-        };
-        let says = [one_says, other_says]
-            .into_iter()
-            .flatten()
-            .collect::<Vec<_>>();
-        Ok(Ruling::new(Judgement {
-            verdict,
-            says: says.join(" and "),
-            witness: None,
-        }))
-    }
-
-    /// A number, or the two it lies between, with the grounds if it is a figure.
-    fn ends(
-        &self,
-        compiled: &CompiledCode,
-        side: &Expression,
-    ) -> Result<(numbers::Ends, Option<String>), Stop> {
-        self.measures.last.borrow_mut().take();
-        let scope = compiled.scope.about(&compiled.code, Vec::new());
-        let ends = match self.evaluator.evaluate(side, &scope) {
-            Ok(Value::Integer(number)) => {
-                let number = BigRational::from_integer(number);
-                (number.clone(), number)
-            }
-            Ok(Value::Rational(number)) => (number.clone(), number),
-            Err(Stop::Enclosed { ends, .. }) => *ends,
-            Ok(other) => {
-                return Err(Stop::Finding(Box::new(Finding::new(
-                    catalogue::WRONG_TYPE,
-                    side.span,
-                    format!("a number is compared here, not {}", other.kind()),
-                ))));
-            }
-            Err(stop) => return Err(stop),
-        };
-        let grounds = self.measures.last.borrow_mut().take();
-        Ok((ends, grounds.map(|judgement| judgement.says)))
-    }
-
-    fn assumed(
-        &self,
-        compiled: &CompiledCode,
-        expression: &Expression,
-        assumed: Vec<(String, Value)>,
-    ) -> Result<bool, Stop> {
-        let scope = compiled.scope.about(&compiled.code, assumed);
-        self.evaluator.condition(expression, &scope)
-    }
-
-    /// The two sides of a comparison as they came out: `row_weight is 38, not <= 36`.
-    fn grounds(&self, compiled: &CompiledCode, expression: &Expression, holds: bool) -> String {
-        let scope = compiled.scope.about(&compiled.code, Vec::new());
-        if let ExpressionKind::Binary(_, left, right) = &expression.kind
-            && let (Ok(one), Ok(other)) = (
-                self.evaluator.evaluate(left, &scope),
-                self.evaluator.evaluate(right, &scope),
-            )
-        {
-            // A side that is a plain number says nothing new.
-            let sides: Vec<String> = [(left, one), (right, other)]
-                .into_iter()
-                .map(|(side, value)| (self.evaluator.text(side.span), value.to_string()))
-                .filter(|(text, value)| text != value)
-                .map(|(text, value)| format!("{text} is {value}"))
-                .collect();
-            if !sides.is_empty() {
-                return sides.join(" and ");
-            }
-        }
-        if holds {
-            "it evaluates to true".into()
-        } else {
-            "it evaluates to false".into()
-        }
-    }
-
     fn finding(
         &self,
         compiled: &CompiledCode,
@@ -496,91 +307,6 @@ pub fn interval(distance: &Distance) -> String {
     match distance.exact() {
         Some(exact) => exact.to_string(),
         None => format!("{}..{}", distance.lower, distance.upper),
-    }
-}
-
-/// A requirement with its operands, to be decided.
-pub struct Asked<'a> {
-    /// What it is judged by.
-    pub court: &'a Court<'a>,
-    /// The code.
-    pub compiled: &'a CompiledCode,
-    /// The operands in order, and where they stand.
-    pub operands: Vec<(Value, Span)>,
-    /// The condition.
-    pub span: Span,
-}
-
-impl Asked<'_> {
-    /// The code.
-    pub fn code(&self) -> &Code {
-        &self.compiled.code
-    }
-
-    /// An operand as a whole number from 0 on.
-    ///
-    /// # Errors
-    /// When it is none.
-    pub fn number(&self, at: usize) -> Result<usize, Stop> {
-        use num_traits::ToPrimitive;
-        let (value, span) = &self.operands[at];
-        let number = match value {
-            Value::Integer(number) => number.to_usize().filter(|&number| number < 1 << 40),
-            _ => None,
-        };
-        number.ok_or_else(|| {
-            Stop::Finding(Box::new(Finding::new(
-                catalogue::WRONG_TYPE,
-                *span,
-                format!("a whole number from 0 on is needed here, not {value}"),
-            )))
-        })
-    }
-
-    /// An operand as a code.
-    ///
-    /// # Errors
-    /// When it is none.
-    pub fn code_operand(&self, at: usize) -> Result<&Code, Stop> {
-        match &self.operands[at] {
-            (Value::Code(code), _) => Ok(code),
-            (other, span) => Err(Stop::Finding(Box::new(Finding::new(
-                catalogue::WRONG_TYPE,
-                *span,
-                format!("a code is needed here, not {}", other.kind()),
-            )))),
-        }
-    }
-
-    /// Positions by name.
-    pub fn named(&self, positions: &[usize]) -> String {
-        position_names(self.compiled.position_names.as_deref(), positions).join(", ")
-    }
-
-    /// The positions of a word.
-    pub fn word_named(&self, word: &[u32]) -> String {
-        self.named(&support(word).0)
-    }
-}
-
-/// A judgement with what a finding about it needs.
-pub struct Ruling {
-    /// The verdict.
-    pub judgement: Judgement,
-    /// What to write instead.
-    pub help: Option<String>,
-    /// The distance that would have been enough, when that is what is missing.
-    pub needed: Option<usize>,
-}
-
-impl Ruling {
-    /// A judgement alone.
-    pub fn new(judgement: Judgement) -> Ruling {
-        Ruling {
-            judgement,
-            help: None,
-            needed: None,
-        }
     }
 }
 

@@ -8,13 +8,15 @@ mod arithmetic;
 pub mod call;
 mod compare;
 mod convert;
+mod entry;
 mod points;
 mod polynomial;
 
 pub use arithmetic::{binary, negate, symbol};
-pub use call::{Call, Entry, Given, Parameter, bind_arguments, needed, optional};
+pub use call::{Call, Given, bind_arguments};
 pub use compare::{compare, contains, equal};
 pub use convert::{element_of, integer_of, items_of};
+pub use entry::{Entry, Parameter, needed, optional};
 pub use points::{Monomials, Points};
 pub use polynomial::{Coefficient, Polynomial, VARIABLES};
 

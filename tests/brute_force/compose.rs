@@ -3,6 +3,9 @@
 use super::{Dice, Field, Plain, Word, hamming_checks};
 use std::sync::Arc;
 
+/// Which points a condition lets through.
+type Condition = Box<dyn Fn(&Word) -> bool>;
+
 /// The most words of a code that is judged, and of its dual; of most codes fewer, to judge more.
 const MOST_WORDS: usize = 20_000;
 const FEW_WORDS: usize = 1_500;
@@ -268,7 +271,7 @@ fn by_points(dice: &mut Dice, field: &Arc<Field>) -> (String, Plain) {
             .filter(|exponents| wanted(exponents.iter().sum(), degree))
             .collect();
         let names = ["x", "y", "z"];
-        let (condition, holds): (String, Box<dyn Fn(&Word) -> bool>) = match dice.below(5) {
+        let (condition, holds): (String, Condition) = match dice.below(5) {
             0 => {
                 let to = dice.below(q);
                 (

@@ -63,7 +63,7 @@ impl Field {
             .collect()
     }
 
-    pub fn from_digits(&self, digits: &[u32]) -> u32 {
+    pub fn number_of(&self, digits: &[u32]) -> u32 {
         digits
             .iter()
             .rev()
@@ -81,7 +81,7 @@ impl Field {
             .zip(self.digits(right))
             .map(|(one, other)| (one + other) % self.p)
             .collect();
-        self.from_digits(&sum)
+        self.number_of(&sum)
     }
 
     pub fn neg(&self, element: u32) -> u32 {
@@ -90,7 +90,7 @@ impl Field {
             .iter()
             .map(|digit| (self.p - digit) % self.p)
             .collect();
-        self.from_digits(&digits)
+        self.number_of(&digits)
     }
 
     /// left · right by Horner in a: times a is a shift and a^m replaced.
@@ -112,7 +112,7 @@ impl Field {
         let mut digits = self.digits(element);
         let top = digits.pop().unwrap_or(0);
         digits.insert(0, 0);
-        let mut shifted = self.from_digits(&digits);
+        let mut shifted = self.number_of(&digits);
         for _ in 0..top {
             shifted = self.add(shifted, self.power);
         }
