@@ -163,12 +163,16 @@ impl<'a> Search<'a> {
     fn raise(&mut self, lower: usize, rule: &'static str, says: impl FnOnce() -> String) {
         let value = lower.next_multiple_of(self.divisor);
         if value > self.settled.lower {
+            let mut says = says();
+            if value > lower {
+                says += &format!("; every weight is a multiple of {}", self.divisor);
+            }
             self.settled.lower = value;
             self.settled.says.push(Ground {
                 side: Side::Lower,
                 value,
                 rule,
-                says: says(),
+                says,
             });
         }
     }
@@ -196,8 +200,10 @@ impl<'a> Search<'a> {
 
     /// What follows from n, k and the divisor alone.
     fn bound_by_size(&mut self) {
-        self.raise(self.settled.lower.max(1), "divisor", String::new);
-        self.settled.says.retain(|ground| !ground.says.is_empty());
+        let least = self.settled.lower.max(1);
+        self.raise(least, "divisor", || {
+            format!("no word but zero has a weight below {least}")
+        });
         let singleton = self.n - self.k + 1;
         if singleton < self.settled.upper {
             self.settled.upper = singleton;
