@@ -691,6 +691,90 @@ fn concatenation_goes_to_any_subfield() {
 }
 
 #[test]
+fn generalized_concatenation_chooses_cosets_level_by_level() {
+    let mut random = ChaCha8Rng::seed_from_u64(14);
+    for (field, small, declared) in towers() {
+        let embedding = field.embedding_of(&small).expect("a subfield");
+        let m = embedding.degree() as usize;
+        let basis = embedding.polynomial_basis();
+        let n = m + 2;
+        let inner: Vec<Word> = (0..=m)
+            .map(|at| {
+                let mut row = rows(&mut random, &small, 1, n).remove(0);
+                row[..at].fill(0);
+                row[at] = 1;
+                row
+            })
+            .collect();
+        let first = base(&mut random, &field, 2, 1);
+        let second = base(&mut random, &small, 2, 1);
+        let mut framed = Words::new();
+        for one in &first.words {
+            for two in &second.words {
+                let block = |place: usize| {
+                    // The last row spans the smaller inner code.
+                    let coordinates = basis.coordinates(one[place]);
+                    let digits = [coordinates, vec![two[place]]].concat();
+                    digits
+                        .iter()
+                        .zip(&inner)
+                        .fold(vec![0; n], |sum, (&digit, row)| {
+                            add(&small, &sum, &times(&small, digit, row))
+                        })
+                };
+                framed.insert([block(0), block(1)].concat());
+            }
+        }
+        let text = format!(
+            "{declared}code wide over s = span({})\ncode narrow over s = span({})\ncode second over s = {}\ncode after = {} over f then generalized_concatenate(outers: [second], inners: [wide, narrow])\n",
+            literal(&inner),
+            literal(&inner[m..]),
+            second.text,
+            first.text
+        );
+        judge(&text, &small, 2 * n, &framed);
+    }
+}
+
+#[test]
+fn steps_that_choose_words_or_join_them_move_the_mask_too() {
+    let offset = |step: &str| {
+        let text = format!(
+            "field f = GF(4) where a^2 = a + 1\ncode c over GF(2) = span(| 1 0 0 1 | | 0 1 1 0 |)\ncode after = c then mask(with: [1, 0, 1, 1]) then {step}\n"
+        );
+        with_spec(&text, |view| {
+            let codes = &view.codes;
+            let after = codes.iter().find(|code| code.compiled.name == "after");
+            let after = after.unwrap_or_else(|| panic!("{step}: {:?}", view.findings));
+            after.compiled.code.offset().map(<[u32]>::to_vec)
+        })
+    };
+    for (step, expected) in [
+        ("shorten(first: 1)", vec![0, 1, 1]),
+        ("expurgate", vec![1, 0, 1, 1]),
+        ("augment", vec![1, 0, 1, 1]),
+        ("subcode(dimension: 1)", vec![1, 0, 1, 1]),
+        ("lengthen", vec![1, 0, 1, 1, 1]),
+        ("interleave(depth: 2)", vec![1, 1, 0, 0, 1, 1, 1, 1]),
+        (
+            "plotkin(repetition(4) over GF(2))",
+            vec![1, 0, 1, 1, 1, 0, 1, 1],
+        ),
+        ("direct_sum(parity(2) over GF(2))", vec![1, 0, 1, 1, 0, 0]),
+        (
+            "concatenate(repetition(2) over GF(2))",
+            vec![1, 1, 0, 0, 1, 1, 1, 1],
+        ),
+        ("image", vec![1, 0, 1, 1]),
+        ("lift(f)", vec![1, 0, 1, 1]),
+        ("lift(f) then image", vec![1, 0, 0, 0, 1, 0, 1, 0]),
+        ("arrange(data: last)", vec![1, 1, 1, 0]),
+    ] {
+        assert_eq!(offset(step), Some(expected), "{step}");
+    }
+}
+
+#[test]
 fn a_mask_moves_with_what_is_sent() {
     each(13, |random, sample, base, text| {
         let field = &sample.field;
@@ -821,6 +905,10 @@ fn bad_arguments_get_a_finding() {
         "image(to: GF(4))",
         "image(basis: [1, 1])",
         "concatenate(parity(3))",
+        "generalized_concatenate(outers: [], inners: [parity(3)])",
+        "generalized_concatenate(outers: [parity(5)], inners: [parity(3), repetition(3)])",
+        "generalized_concatenate(outers: [parity(4)], inners: [repetition(3), parity(3)])",
+        "generalized_concatenate(outers: [1], inners: [2])",
     ] {
         let text = format!("code c over GF(2) = parity(4) then {step}\n");
         let found = findings(&text);

@@ -23,7 +23,7 @@ pub const ENTRY: Step = Step {
     ],
     says: "Appends to each word a word of the tail that tells its coset of the subcode. The rows of the code's generator matrix that are independent of the subcode and of each other, in order, take the rows of the tail's.",
     theory: "n adds up, k stays, and d is at least the lesser of the subcode's distance and the sum of \
-             the code's and the tail's (Sloane, Reddy and Chen, 1972; MacWilliams and Sloane, 1977, ch. 18 §7.1).",
+             the code's and the tail's (Sloane, Reddy and Chen, 1972; MacWilliams and Sloane, 1977, ch. 18 §7, from memory).",
     example: "\
 field bit = GF(2)
 code gauge_word over bit
@@ -74,7 +74,7 @@ fn run(code: &Code, call: &Call) -> Found<Made> {
 }
 
 /// The rows of a matrix that are independent of those below and of the rows before them.
-fn independent(below: &Matrix, rows: &Matrix) -> Vec<usize> {
+pub(super) fn independent(below: &Matrix, rows: &Matrix) -> Vec<usize> {
     let pivots = below.above(rows).transpose().reduced().pivots;
     pivots
         .into_iter()

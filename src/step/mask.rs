@@ -17,7 +17,8 @@ pub const ENTRY: Step = Step {
     says: "Adds a fixed word to every word on the wire, so that a stuck line need be no word; the linear code stays as it is, and what is delivered is shifted.",
     theory: "A translate of the code: the difference of two words sent is a word of the code, so d, \
              weights and what is detected stay. Later steps act on what is sent: `mask` before \
-             `extend` is not `mask` after it. A step that has no meaning for a translate is refused.",
+             `extend` is not `mask` after it. `shorten`, `expurgate`, `augment` and `subcode` choose words \
+             before the mask is added. A step that has no meaning for a translate is refused.",
     example: "\
 field bit = GF(2)
 code gauge_word over bit

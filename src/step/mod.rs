@@ -12,6 +12,7 @@ mod direct_sum;
 mod dual;
 mod expurgate;
 mod extend;
+mod generalized_concatenate;
 mod hull;
 mod image;
 mod interleave;
@@ -54,6 +55,7 @@ pub const STEPS: &[&Step] = &[
     &dual::ENTRY,
     &expurgate::ENTRY,
     &extend::ENTRY,
+    &generalized_concatenate::ENTRY,
     &hull::ENTRY,
     &image::ENTRY,
     &interleave::ENTRY,

@@ -18,7 +18,7 @@ pub const ENTRY: Step = Step {
         "its check matrix checks within the blocks; the code so far checks across them",
     )],
     says: "The code whose check matrix is the Kronecker product of the two check matrices, the code so far first; a word is a rectangle, sent row by row.",
-    theory: "n and n - k are the products of the two codes' (Wolf, 1965). It is the dual of the product of \
+    theory: "n and n - k are the products of the two codes' (Wolf, 1965, from memory). It is the dual of the product of \
              the two duals, and d is the lesser of the two: so few columns are independent in one factor or the other, \
              and a light word of either code, put in one column or one row, is a word.",
     example: "\
