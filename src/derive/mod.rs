@@ -13,9 +13,10 @@ mod verdict;
 pub use measures::{MEASURES, SessionMeasures};
 pub use verdict::{Judgement, Verdict};
 
-use crate::algebra::Element;
+use crate::algebra::{Element, Matrix};
 use crate::code::{
-    Bound, Code, Counts, Distance, Knowledge, Made, OriginKind, Side, Weights, lower, upper, weight,
+    Bound, Code, Counts, Distance, Knowledge, Made, OriginKind, Side, Space, Weights, lower, upper,
+    weight,
 };
 use num_bigint::BigUint;
 use search::{Budget, Progress};
@@ -25,7 +26,8 @@ use std::collections::HashMap;
 /// The work that is spent on a code while it is only a parent, or a step on the way.
 const SMALL_WORK: u64 = 1 << 27;
 
-/// The most entries of a generator matrix that is built for a search.
+/// The most entries of a matrix that is built for a search. A long code of high rate has a
+/// generator matrix, one of low rate a check matrix, that is all but dense and of no use.
 const ENTRIES: usize = 1 << 28;
 
 /// Derives what is asked for and remembers it, for one run.
@@ -143,11 +145,9 @@ impl<'a> Session<'a> {
     fn search(&self, code: &Code, distance: &mut Distance, effort: Effort) {
         let budget = self.budget(effort);
         let divisor = properties::divisor(code);
-        // A long code of high rate has a generator matrix that is all but dense and of no use.
-        let enumerable = code.dimension().saturating_mul(code.length()) <= ENTRIES;
         let settled = search::settle(
-            enumerable.then(|| code.generator_matrix()),
-            Some(code.check_matrix()),
+            small_generator(code),
+            small_check(code),
             distance.lower,
             distance.upper,
             divisor,
@@ -207,8 +207,11 @@ impl<'a> Session<'a> {
         let budget = self.budget(effort);
         let own = search::cost_of_words(q, k, n);
         let dual = search::cost_of_words(q, n - k, n);
+        if own.min(dual) > budget.left() {
+            return None;
+        }
         if own <= dual {
-            let counts = search::weight_counts(code.generator_matrix(), &budget, self.progress)?;
+            let counts = search::weight_counts(small_generator(code)?, &budget, self.progress)?;
             return Some(Weights {
                 counts: counted(counts),
                 says: format!("all {q}^{k} words counted"),
@@ -217,7 +220,7 @@ impl<'a> Session<'a> {
         if n > 1 << 14 {
             return None;
         }
-        let counts = search::weight_counts(code.check_matrix(), &budget, self.progress)?;
+        let counts = search::weight_counts(small_check(code)?, &budget, self.progress)?;
         Some(Weights {
             counts: counted(search::macwilliams(&counts, q, n, n - k)?),
             says: format!(
@@ -263,7 +266,8 @@ impl<'a> Session<'a> {
         } else if cosets <= (1u64 << 24) as f64
             && cosets * code.length() as f64 <= (1u64 << 32) as f64
         {
-            search::covering_radius(code.check_matrix(), &self.budget(Effort::Full))
+            small_check(code)
+                .and_then(|check| search::covering_radius(check, &self.budget(Effort::Full)))
         } else {
             None
         };
@@ -298,6 +302,21 @@ fn learn(code: &Code, distance: &mut Distance, bound: Bound) {
         );
     }
     distance.learn(bound);
+}
+
+/// A generator matrix of full rank, when it is at hand or not too large to build.
+pub(crate) fn small_generator(code: &Code) -> Option<&Matrix> {
+    let at_hand = matches!(code.space(), Space::Span(matrix) if matrix.rows() == code.dimension());
+    let small = code.dimension().saturating_mul(code.length()) <= ENTRIES;
+    (at_hand || small).then(|| code.generator_matrix())
+}
+
+/// A check matrix of full rank, when it is at hand or not too large to build.
+pub(crate) fn small_check(code: &Code) -> Option<&Matrix> {
+    let at_hand =
+        matches!(code.space(), Space::Check(matrix) if matrix.rows() == code.redundancy());
+    let small = code.redundancy().saturating_mul(code.length()) <= ENTRIES;
+    (at_hand || small).then(|| code.check_matrix())
 }
 
 /// Counts by index as counts by weight, zeros left out.

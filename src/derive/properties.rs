@@ -1,12 +1,15 @@
 //! Properties of a code, each with its decision procedure and grounds.
 
-use super::{Effort, Judgement, Session, Verdict};
+use super::{Effort, Judgement, Session, Verdict, small_check, small_generator};
 use crate::algebra::Matrix;
-use crate::code::{Code, Space, information_positions, weight};
+use crate::code::{Code, Space, weight};
 use num_bigint::BigUint;
 
 /// The most multiplications that a property may cost.
 const WORK: usize = 1 << 33;
+
+/// The most entries of a matrix whose columns are all kept at once.
+const COLUMN_ENTRIES: usize = 1 << 26;
 
 /// A property: its name in the language, what it means, how it is decided.
 pub struct Property {
@@ -141,6 +144,10 @@ pub fn ball(length: usize, order: u64, radius: usize) -> BigUint {
     sum
 }
 
+fn too_large() -> Judgement {
+    Judgement::undecided("the matrices are too large to build")
+}
+
 /// The first pair of rows of two matrices that are not orthogonal; `Err` when it costs too much.
 fn skew_pair(one: &Matrix, two: &Matrix) -> Result<Option<(usize, usize)>, ()> {
     if one
@@ -178,7 +185,9 @@ fn self_orthogonal(_session: &Session, code: &Code) -> Judgement {
             code.redundancy()
         ));
     }
-    let generator = code.generator_matrix();
+    let Some(generator) = small_generator(code) else {
+        return too_large();
+    };
     orthogonal(
         generator,
         generator,
@@ -195,7 +204,9 @@ fn dual_containing(_session: &Session, code: &Code) -> Judgement {
             code.redundancy()
         ));
     }
-    let check = code.check_matrix();
+    let Some(check) = small_check(code) else {
+        return too_large();
+    };
     orthogonal(
         check,
         check,
@@ -222,7 +233,9 @@ fn self_dual(session: &Session, code: &Code) -> Judgement {
 }
 
 fn complementary_dual(_session: &Session, code: &Code) -> Judgement {
-    let generator = code.generator_matrix();
+    let Some(generator) = small_generator(code) else {
+        return too_large();
+    };
     let size = generator.rows();
     if size
         .saturating_mul(size)
@@ -265,11 +278,15 @@ pub fn is_cyclic(session: &Session, code: &Code) -> Judgement {
         return Judgement::undecided("the matrices are too large to multiply");
     }
     let order: Vec<usize> = (0..length).map(|at| (at + length - 1) % length).collect();
-    let shifted = code.generator_matrix().select_columns(&order);
-    match skew_pair(&shifted, code.check_matrix()) {
+    let (Some(generator), Some(check)) = (small_generator(code), small_check(code)) else {
+        return too_large();
+    };
+    let shifted = generator.select_columns(&order);
+    match skew_pair(&shifted, check) {
         Ok(None) => Judgement::holds("the shifts of a generator matrix's rows are words"),
-        Ok(Some((row, _))) => Judgement::fails("a word's cyclic shift is no word")
-            .witness(Some(code.generator_matrix().row(row))),
+        Ok(Some((row, _))) => {
+            Judgement::fails("a word's cyclic shift is no word").witness(Some(generator.row(row)))
+        }
         Err(()) => Judgement::undecided("the matrices are too large to multiply"),
     }
 }
@@ -283,7 +300,9 @@ fn divisible(session: &Session, code: &Code, by: usize) -> Judgement {
                 "all rows of a generator matrix have weights divisible by {by}, and so have their sums"
             ));
         }
-        let generator = code.generator_matrix();
+        let Some(generator) = small_generator(code) else {
+            return too_large();
+        };
         let odd = (0..generator.rows())
             .map(|row| generator.row(row))
             .find(|row| weight(row) % by != 0);
@@ -291,7 +310,7 @@ fn divisible(session: &Session, code: &Code, by: usize) -> Judgement {
             Some(word) => {
                 Judgement::fails(format!("a word has weight {}", weight(&word))).witness(Some(word))
             }
-            None => skew_sum(code, by),
+            None => skew_sum(code, generator, by),
         };
     };
     match weights.counts.keys().find(|&&weight| weight % by != 0) {
@@ -301,9 +320,8 @@ fn divisible(session: &Session, code: &Code, by: usize) -> Judgement {
 }
 
 /// Two rows whose sum has a weight that is not divisible, when each row's is.
-fn skew_sum(code: &Code, by: usize) -> Judgement {
+fn skew_sum(code: &Code, generator: &Matrix, by: usize) -> Judgement {
     let field = code.field();
-    let generator = code.generator_matrix();
     if let Ok(Some((row, other))) = skew_pair(generator, generator)
         && row != other
     {
@@ -354,19 +372,31 @@ pub fn divisor(code: &Code) -> usize {
 
 fn systematic(_session: &Session, code: &Code) -> Judgement {
     let (n, k) = (code.length(), code.dimension());
-    let informative =
-        |positions: Vec<usize>| code.generator_matrix().select_columns(&positions).rank() == k;
     if let Space::Cyclic(_) = code.space() {
         return Judgement::holds(
             "the first k positions of a cyclic code are free to carry data, the checks come last",
         );
     }
-    if information_positions(code).iter().copied().eq(0..k) || informative((0..k).collect()) {
+    // Some positions carry the data just when the others can carry the checks.
+    let informative = |data: std::ops::Range<usize>, checks: std::ops::Range<usize>| {
+        if k <= n - k {
+            let positions: Vec<usize> = data.collect();
+            small_generator(code).map(|matrix| matrix.select_columns(&positions).rank() == k)
+        } else {
+            let positions: Vec<usize> = checks.collect();
+            small_check(code).map(|matrix| matrix.select_columns(&positions).rank() == n - k)
+        }
+    };
+    let (Some(first), Some(last)) = (informative(0..k, k..n), informative(n - k..n, 0..n - k))
+    else {
+        return too_large();
+    };
+    if first {
         return Judgement::holds(
             "the first k positions are free to carry data, the checks come last",
         );
     }
-    if informative((n - k..n).collect()) {
+    if last {
         return Judgement::holds(
             "the last k positions are free to carry data, the checks come first",
         );
@@ -395,6 +425,9 @@ fn equidistant(session: &Session, code: &Code) -> Judgement {
 
 fn projective(_session: &Session, code: &Code) -> Judgement {
     let field = code.field();
+    if code.dimension().saturating_mul(code.length()) > COLUMN_ENTRIES {
+        return too_large();
+    }
     let generator = code.generator_matrix();
     let mut seen = std::collections::HashMap::new();
     for position in 0..code.length() {

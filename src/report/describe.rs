@@ -132,7 +132,10 @@ fn largest_distances(code: &Code, report: &mut CodeReport) {
     for (name, bound) in plain {
         report.bounds.push(name, bound(q, n, k) as u64);
     }
-    for (name, bound) in [("johnson", bounds::johnson(q, n, k)), ("elias", bounds::elias(q, n, k))] {
+    for (name, bound) in [
+        ("johnson", bounds::johnson(q, n, k)),
+        ("elias", bounds::elias(q, n, k)),
+    ] {
         if let Some(bound) = bound {
             report.bounds.push(name, bound as u64);
         }

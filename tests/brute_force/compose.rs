@@ -53,7 +53,10 @@ fn count(q: u32, k: usize) -> usize {
 
 /// The most dimensions with few enough words.
 fn most_dimensions(q: u32) -> usize {
-    (0..).take_while(|&k| count(q, k) <= 2048).last().unwrap_or(0)
+    (0..)
+        .take_while(|&k| count(q, k) <= 2048)
+        .last()
+        .unwrap_or(0)
 }
 
 /// A random code by a random construction.
@@ -208,7 +211,11 @@ fn vanishing(
             rows.push(row);
         } else if field.m == 1 {
             for digit in 0..large.m as usize {
-                rows.push(row.iter().map(|&entry| large.digits(entry)[digit]).collect());
+                rows.push(
+                    row.iter()
+                        .map(|&entry| large.digits(entry)[digit])
+                        .collect(),
+                );
             }
         } else {
             // GF(4) in GF(16), whose a is sent to a^5: digit j of the sum of row entries times
@@ -314,9 +321,12 @@ fn by_points(dice: &mut Dice, field: &Arc<Field>) -> (String, Plain) {
                     .iter()
                     .zip(&scale)
                     .map(|(point, &scale)| {
-                        point.iter().zip(exponents).fold(scale, |value, (&at, &exponent)| {
-                            field.mul(value, field.pow(at, exponent))
-                        })
+                        point
+                            .iter()
+                            .zip(exponents)
+                            .fold(scale, |value, (&at, &exponent)| {
+                                field.mul(value, field.pow(at, exponent))
+                            })
                     })
                     .collect()
             })
@@ -465,11 +475,7 @@ fn step(dice: &mut Dice, plain: &Plain, other: &mut Other) -> Option<(String, Pl
                 nothing(),
             )
         }
-        10 if plain.field.m > 1 => (
-            "subfield(small)".to_string(),
-            plain.subfield(),
-            nothing(),
-        ),
+        10 if plain.field.m > 1 => ("subfield(small)".to_string(), plain.subfield(), nothing()),
         11 if plain.field.m > 1 => digits(dice, plain)?,
         12 => {
             let (declaration, name, with) = other(dice, &plain.field);
@@ -477,7 +483,11 @@ fn step(dice: &mut Dice, plain: &Plain, other: &mut Other) -> Option<(String, Pl
                 return None;
             }
             if with.n == n {
-                (format!("plotkin({name})"), plain.plotkin(&with), declaration)
+                (
+                    format!("plotkin({name})"),
+                    plain.plotkin(&with),
+                    declaration,
+                )
             } else {
                 (
                     format!("direct_sum({name})"),

@@ -8,7 +8,6 @@ pub mod compose;
 use std::collections::{BTreeMap, BTreeSet, HashSet};
 use std::sync::Arc;
 
-
 pub type Word = Vec<u32>;
 
 /// GF(p^m): an element is the integer whose digits in base p are its coefficients, lowest first.
@@ -318,7 +317,9 @@ impl Plain {
 
     pub fn extend(&self) -> Plain {
         self.map(self.n + 1, |word| {
-            let sum = word.iter().fold(0, |sum, &entry| self.field.add(sum, entry));
+            let sum = word
+                .iter()
+                .fold(0, |sum, &entry| self.field.add(sum, entry));
             let mut longer = word.clone();
             longer.push(self.field.neg(sum));
             longer
@@ -507,7 +508,12 @@ impl Plain {
             .map(|word| {
                 self.words
                     .iter()
-                    .map(|code| code.iter().zip(word).filter(|(one, other)| one != other).count())
+                    .map(|code| {
+                        code.iter()
+                            .zip(word)
+                            .filter(|(one, other)| one != other)
+                            .count()
+                    })
                     .min()
                     .expect("the zero word")
             })
@@ -519,7 +525,9 @@ impl Plain {
 /// The words of a ball, counted one radius at a time.
 pub fn ball(q: u32, n: usize, radius: usize) -> u128 {
     let choose = |many: usize| {
-        (0..many).fold(1u128, |value, at| value * (n - at) as u128 / (at + 1) as u128)
+        (0..many).fold(1u128, |value, at| {
+            value * (n - at) as u128 / (at + 1) as u128
+        })
     };
     (0..=radius.min(n))
         .map(|weight| choose(weight) * u128::from(q - 1).pow(weight as u32))

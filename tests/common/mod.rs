@@ -126,7 +126,9 @@ fn measures(
     let check = || structure::check_matrix(code);
     add("covering_radius", &|| view.session.covering_radius(code));
     add("row_weight", &|| most(structure::row_weights(check())));
-    add("column_weight", &|| most(structure::column_weights(check())));
+    add("column_weight", &|| {
+        most(structure::column_weights(check()))
+    });
     add("girth", &|| structure::girth(check()).ok().flatten());
     measures
 }

@@ -100,7 +100,7 @@ pub const FUNCTIONS: &[Function] = &[
         ],
         says: "The matrix that is constant along each diagonal.",
         theory: "",
-        example: "field bit = GF(2)\ncode tide over bit = check(toeplitz(column: [1, 0], row: [1, 1, 0, 1]))\n  is [4, 2, 1]\n",
+        example: "field bit = GF(2)\ncode tide over bit = check(toeplitz(column: [1, 0], row: [1, 1, 0, 1]))\n  is [4, 2, 2]\n",
         run: toeplitz,
     },
     Function {
