@@ -45,7 +45,7 @@ fn values_and_arguments() {
         "code c over bit = hamming(3) then extend(1)",
         "code c over bit = cyclic(length: 7)",
         "code c over bit = pick r in 2..4 minimizing n from hamming(r) where k > 100",
-        "code c over bit = check(file(\"absent.mtx\"))",
+        "code c over bit = check(matrix_file(\"absent.mtx\"))",
         "code c over bit = hamming(3) then frobnicate",
     ]));
 }
@@ -93,12 +93,13 @@ fn claims_and_requirements() {
         "code c over bit = check(identity(3))\n  is [3, 0, 1]",
         "code c over bit = hamming(3)\n  is [7, 4, 3] with weights {0: 1, 3: 7, 4: 7, 7: 2}",
         "code c over bit = bch(length: 255, distance: 41)\n  is [_, _, 41]",
+        "code c over bit = bch(length: 255, distance: 41)\n  is [_, _, 61]",
         "code c over bit = hamming(3)\n  require corrects 2",
         "code c over bit = hamming(3)\n  require corrects 1 while detecting 2",
         "code c over bit = hamming(3)\n  require self_dual",
         "code c over bit = hamming(3)\n  prefer row_weight <= 3",
-        "code c over bit = bch(length: 255, distance: 41)\n  require corrects 21",
-        "code c over bit = bch(length: 255, distance: 41)\n  prefer corrects 21",
+        "code c over bit = bch(length: 255, distance: 41)\n  require corrects 30",
+        "code c over bit = bch(length: 255, distance: 41)\n  prefer corrects 30",
         "code c over bit = hamming(3)\n  require corects 1",
         "code c over bit = hamming(3)\n  require no cycles",
     ]));
@@ -146,4 +147,23 @@ fn twenty_mistakes_are_all_told_in_one_run() {
         .map(|finding| finding.span)
         .collect();
     assert_eq!((told.len(), places.len()), (20, 20), "{}", told.join("\n"));
+}
+
+#[test]
+fn an_artefact_that_is_none_is_told_with_those_that_are() {
+    let folder = tempfile::tempdir().expect("a folder");
+    let path = folder.path().join("gauge.coset");
+    let text = format!("{FIELDS}code gauge_word over bit = hamming(3)\n");
+    std::fs::write(&path, text).expect("a file");
+    let run = std::process::Command::new(env!("CARGO_BIN_EXE_cosetta"))
+        .arg("emit")
+        .arg(&path)
+        .args(["gauge_word", "chek_matrix", "--as", "mtx"])
+        .output()
+        .expect("the compiler runs");
+    let told =
+        String::from_utf8_lossy(&run.stderr).into_owned() + &String::from_utf8_lossy(&run.stdout);
+    assert_eq!(run.status.code(), Some(2), "{told}");
+    assert!(told.contains("unknown-artefact"), "{told}");
+    assert!(told.contains("check_matrix"), "{told}");
 }

@@ -40,7 +40,7 @@ pub struct Session<'a> {
 /// What is remembered of a code.
 struct Memo {
     /// Keeps the code, so that its key stays its own.
-    code: Code,
+    _code: Code,
     distance: Option<(Effort, Distance)>,
     weights: Option<Option<Weights>>,
     dual: Option<Code>,
@@ -73,7 +73,7 @@ impl<'a> Session<'a> {
     fn remember(&self, code: &Code, write: impl FnOnce(&mut Memo)) {
         let mut memo = self.memo.borrow_mut();
         write(memo.entry(code.key()).or_insert_with(|| Memo {
-            code: code.clone(),
+            _code: code.clone(),
             distance: None,
             weights: None,
             dual: None,

@@ -141,7 +141,11 @@ impl Court<'_> {
             .to_usize()
             .is_some_and(|wanted| distance.upper < wanted);
         if verdict == Verdict::Fails {
-            finding = finding.help(format!("write {shown} here if that is what is meant"));
+            let claim = match distance.exact() {
+                Some(exact) => exact.to_string(),
+                None => format!("`>= {}`", distance.lower),
+            };
+            finding = finding.help(format!("write {claim} here if that is what is meant"));
             match distance.witness.as_ref().filter(|_| too_low) {
                 Some(word) => {
                     let (positions, values) = support(word);

@@ -21,7 +21,7 @@ field octal = GF(8) where a^3 = a + 1
 code gauge_word
   = reed_solomon(length: 7, dimension: 3) over octal
   then image
-  is [21, 9, 8]
+  is [21, 9, 6]
 ",
     run,
 };

@@ -127,7 +127,7 @@ pub const FUNCTIONS: &[Function] = &[
         ],
         says: "The greatest integer e with base^e at most the value.",
         theory: "",
-        example: "let bits = logarithm(1000, 2)\nfield bit = GF(2)\ncode tide over bit = parity(bits)\n  is [9, 8, 2]\n",
+        example: "let width = logarithm(1000, 2)\nfield bit = GF(2)\ncode tide over bit = parity(width)\n  is [9, 8, 2]\n",
         run: logarithm,
     },
     Function {
