@@ -323,6 +323,11 @@ impl Code {
         match &self.body.space {
             Space::Check(matrix) => matrix.times(word).iter().all(|&entry| entry == 0),
             Space::Cyclic(cyclic) => cyclic.contains(word),
+            // A check matrix of a long code with few words is far larger than the code itself.
+            Space::Span(matrix) if self.redundancy() > 4 * (matrix.rows() + 16) => {
+                let row = Matrix::from_rows(self.field(), self.length(), &[word.to_vec()]);
+                matrix.above(&row).rank() == self.dimension()
+            }
             Space::Span(_) => self
                 .check_matrix()
                 .times(word)

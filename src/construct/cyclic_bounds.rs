@@ -121,16 +121,18 @@ impl RootSet {
         let mut says = None;
         let mut work = 0;
         for step in (1..=self.length / 2).filter(|step| step.gcd(&self.length) == 1) {
+            work += self.length + self.roots.len() as u64;
             for (start, run) in self.runs(step) {
                 for shorter in 1..=run {
                     let designed = shorter + 1;
                     for second in 1..self.length {
+                        work += 1;
+                        if work > WORK || best > self.roots.len() {
+                            // By Singleton, d is at most one more than the number of roots.
+                            return says.map(|says| (best, says));
+                        }
                         if second.gcd(&self.length) >= designed {
                             continue;
-                        }
-                        work += 1;
-                        if work > WORK {
-                            return says.map(|says| (best, says));
                         }
                         let mut repeats = 0;
                         while repeats < self.length
@@ -138,6 +140,7 @@ impl RootSet {
                                 .all(|at| self.has(start + at * step + (repeats + 1) * second))
                         {
                             repeats += 1;
+                            work += shorter;
                         }
                         let value = (designed + repeats) as usize;
                         if value > best {
@@ -154,17 +157,25 @@ impl RootSet {
         says.map(|says| (best, says))
     }
 
-    /// All roots with the number of roots in a row from each, in steps.
+    /// All roots with the number of roots in a row from each, in steps. The step is prime to n, so
+    /// one way round passes every exponent; it goes backwards and begins where no root is.
     fn runs(&self, step: u64) -> Vec<(u64, u64)> {
+        let Some(gap) = self.member.iter().position(|&member| !member) else {
+            return Vec::new();
+        };
+        let mut length_from = vec![0u64; self.member.len()];
+        let back = self.length - step % self.length;
+        let mut at = gap as u64;
+        for _ in 1..self.length {
+            let next = (at + back) % self.length;
+            if self.has(next) {
+                length_from[next as usize] = length_from[at as usize] + 1;
+            }
+            at = next;
+        }
         self.roots
             .iter()
-            .map(|&start| {
-                let mut run = 0;
-                while run < self.length && self.has(start + run * step) {
-                    run += 1;
-                }
-                (start, run)
-            })
+            .map(|&start| (start, length_from[start as usize]))
             .collect()
     }
 }

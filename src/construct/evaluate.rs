@@ -78,6 +78,15 @@ fn run(call: &Call) -> Found<Made> {
             ),
         ));
     }
+    let order = points.field.order();
+    let most = monomials.exponents.iter().flatten().max();
+    if let Some(exponent) = most.filter(|&&exponent| u64::from(exponent) >= order) {
+        let message = format!(
+            "the monomials have exponents up to {exponent}, but over {}, where the points lie, exponents stay below {order}",
+            points.field
+        );
+        return Err(call.wrong("monomials", catalogue::FIELD_MISMATCH, message));
+    }
     if monomials.len().saturating_mul(points.len()) > MATRIX_ENTRIES {
         return Err(call.trouble(
             catalogue::LIMIT,

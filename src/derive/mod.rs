@@ -17,9 +17,10 @@ mod verdict;
 pub use measures::{MEASURES, SessionMeasures};
 pub use verdict::{Judgement, Verdict};
 
-use crate::algebra::Element;
+use crate::algebra::{Element, Matrix};
 use crate::code::{
-    Bound, Code, Counts, Distance, Knowledge, Made, OriginKind, Side, Weights, lower, upper, weight,
+    Bound, Code, Counts, Distance, Knowledge, Made, OriginKind, Side, Space, Weights, lower, upper,
+    weight,
 };
 use num_bigint::BigUint;
 use search::{Budget, Progress};
@@ -29,7 +30,8 @@ use std::collections::HashMap;
 /// The work that is spent on a code while it is only a parent, or a step on the way.
 const SMALL_WORK: u64 = 1 << 27;
 
-/// The most entries of a generator matrix that is built for a search.
+/// The most entries of a matrix that is built for a search. A long code of high rate has a
+/// generator matrix, one of low rate a check matrix, that is all but dense and of no use.
 const ENTRIES: usize = 1 << 28;
 
 /// The most entries of a check matrix that a search works on.
@@ -163,17 +165,17 @@ impl<'a> Session<'a> {
     }
 
     fn search(&self, code: &Code, distance: &mut Distance, effort: Effort) {
-        // Matrices beyond this are kept sparse, and the search would make them dense.
-        if code.redundancy().saturating_mul(code.length()) > CHECK_ENTRIES {
+        // Check matrices beyond this are kept sparse, and the search would make them dense.
+        let dense = code.redundancy().saturating_mul(code.length()) <= CHECK_ENTRIES;
+        let (generator, check) = (small_generator(code), small_check(code).filter(|_| dense));
+        if generator.is_none() && check.is_none() {
             return;
         }
         let budget = self.budget(effort);
         let divisor = properties::divisor(code);
-        // A long code of high rate has a generator matrix that is all but dense and of no use.
-        let enumerable = code.dimension().saturating_mul(code.length()) <= ENTRIES;
         let settled = search::settle(
-            enumerable.then(|| code.generator_matrix()),
-            Some(code.check_matrix()),
+            generator,
+            check,
             distance.lower,
             distance.upper,
             divisor,
@@ -237,7 +239,7 @@ impl<'a> Session<'a> {
             return None;
         }
         if own <= dual {
-            let counts = search::weight_counts(code.generator_matrix(), &budget, self.progress)?;
+            let counts = search::weight_counts(small_generator(code)?, &budget, self.progress)?;
             return Some(Weights {
                 counts: counted(counts),
                 says: format!("all {q}^{k} words counted"),
@@ -246,7 +248,7 @@ impl<'a> Session<'a> {
         if n > 1 << 14 {
             return None;
         }
-        let counts = search::weight_counts(code.check_matrix(), &budget, self.progress)?;
+        let counts = search::weight_counts(small_check(code)?, &budget, self.progress)?;
         Some(Weights {
             counts: counted(search::macwilliams(&counts, q, n, n - k)?),
             says: format!(
@@ -293,7 +295,8 @@ impl<'a> Session<'a> {
             && cosets <= (1u64 << 24) as f64
             && cosets * code.length() as f64 <= (1u64 << 32) as f64
         {
-            search::covering_radius(code.check_matrix(), &self.budget(Effort::Full))
+            small_check(code)
+                .and_then(|check| search::covering_radius(check, &self.budget(Effort::Full)))
         } else {
             None
         };
@@ -328,6 +331,21 @@ fn learn(code: &Code, distance: &mut Distance, bound: Bound) {
         );
     }
     distance.learn(bound);
+}
+
+/// A generator matrix of full rank, when it is at hand or not too large to build.
+pub(crate) fn small_generator(code: &Code) -> Option<&Matrix> {
+    let at_hand = matches!(code.space(), Space::Span(matrix) if matrix.rows() == code.dimension());
+    let small = code.dimension().saturating_mul(code.length()) <= ENTRIES;
+    (at_hand || small).then(|| code.generator_matrix())
+}
+
+/// A check matrix of full rank, when it is at hand or not too large to build.
+pub(crate) fn small_check(code: &Code) -> Option<&Matrix> {
+    let at_hand =
+        matches!(code.space(), Space::Check(matrix) if matrix.rows() == code.redundancy());
+    let small = code.redundancy().saturating_mul(code.length()) <= ENTRIES;
+    (at_hand || small).then(|| code.check_matrix())
 }
 
 /// Counts by index as counts by weight, zeros left out.

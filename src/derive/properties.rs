@@ -1,12 +1,15 @@
 //! Properties of a code, each with its decision procedure and grounds.
 
-use super::{Effort, Judgement, Session, Verdict};
+use super::{Effort, Judgement, Session, Verdict, small_check, small_generator};
 use crate::algebra::Matrix;
 use crate::code::{Code, Space, weight};
 use num_bigint::BigUint;
 
 /// The most multiplications that a property may cost.
 const WORK: usize = 1 << 33;
+
+/// The most entries of a matrix whose columns are all kept at once.
+const COLUMN_ENTRIES: usize = 1 << 26;
 
 /// A property: its name in the language, what it means, how it is decided.
 pub struct Property {
@@ -164,6 +167,10 @@ pub fn ball(length: usize, order: u64, radius: usize) -> BigUint {
     sum
 }
 
+fn too_large() -> Judgement {
+    Judgement::undecided("the matrices are too large to build")
+}
+
 /// The first pair of rows of two matrices that are not orthogonal; `Err` when it costs too much.
 fn skew_pair(one: &Matrix, two: &Matrix) -> Result<Option<(usize, usize)>, ()> {
     if one
@@ -201,7 +208,9 @@ fn self_orthogonal(_session: &Session, code: &Code) -> Judgement {
             code.redundancy()
         ));
     }
-    let generator = code.generator_matrix();
+    let Some(generator) = small_generator(code) else {
+        return too_large();
+    };
     orthogonal(
         generator,
         generator,
@@ -218,7 +227,9 @@ fn dual_containing(_session: &Session, code: &Code) -> Judgement {
             code.redundancy()
         ));
     }
-    let check = code.check_matrix();
+    let Some(check) = small_check(code) else {
+        return too_large();
+    };
     orthogonal(
         check,
         check,
@@ -289,11 +300,15 @@ pub fn is_cyclic(session: &Session, code: &Code) -> Judgement {
         return Judgement::undecided("the matrices are too large to multiply");
     }
     let order: Vec<usize> = (0..length).map(|at| (at + length - 1) % length).collect();
-    let shifted = code.generator_matrix().select_columns(&order);
-    match skew_pair(&shifted, code.check_matrix()) {
+    let (Some(generator), Some(check)) = (small_generator(code), small_check(code)) else {
+        return too_large();
+    };
+    let shifted = generator.select_columns(&order);
+    match skew_pair(&shifted, check) {
         Ok(None) => Judgement::holds("the shifts of a generator matrix's rows are words"),
-        Ok(Some((row, _))) => Judgement::fails("a word's cyclic shift is no word")
-            .witness(Some(code.generator_matrix().row(row))),
+        Ok(Some((row, _))) => {
+            Judgement::fails("a word's cyclic shift is no word").witness(Some(generator.row(row)))
+        }
         Err(()) => Judgement::undecided("the matrices are too large to multiply"),
     }
 }
@@ -317,7 +332,9 @@ fn divisible(session: &Session, code: &Code, by: usize) -> Judgement {
                 "all rows of a generator matrix have weights divisible by {by}, and so have their sums"
             ));
         }
-        let generator = code.generator_matrix();
+        let Some(generator) = small_generator(code) else {
+            return too_large();
+        };
         let odd = (0..generator.rows())
             .map(|row| generator.row(row))
             .find(|row| !weight(row).is_multiple_of(by));
@@ -325,7 +342,7 @@ fn divisible(session: &Session, code: &Code, by: usize) -> Judgement {
             Some(word) => {
                 Judgement::fails(format!("a word has weight {}", weight(&word))).witness(Some(word))
             }
-            None => skew_sum(code, by),
+            None => skew_sum(code, generator, by),
         };
     };
     match weights.counts.keys().find(|&&weight| weight % by != 0) {
@@ -335,9 +352,8 @@ fn divisible(session: &Session, code: &Code, by: usize) -> Judgement {
 }
 
 /// Two rows whose sum has a weight that is not divisible, when each row's is.
-fn skew_sum(code: &Code, by: usize) -> Judgement {
+fn skew_sum(code: &Code, generator: &Matrix, by: usize) -> Judgement {
     let field = code.field();
-    let generator = code.generator_matrix();
     if let Ok(Some((row, other))) = skew_pair(generator, generator)
         && row != other
     {
@@ -398,27 +414,26 @@ fn systematic(_session: &Session, code: &Code) -> Judgement {
             "the first k positions of a cyclic code are free to carry data, the checks come last",
         );
     }
-    // Positions carry the data freely when the columns of a check matrix at the others are
-    // independent, or their own columns of a generator matrix are; the smaller matrix decides.
-    let free = |data: std::ops::Range<usize>, checks: std::ops::Range<usize>| {
-        if n - k <= k {
-            code.check_matrix()
-                .select_columns(&checks.collect::<Vec<usize>>())
-                .rank()
-                == n - k
+    // Some positions carry the data just when the others can carry the checks.
+    let informative = |data: std::ops::Range<usize>, checks: std::ops::Range<usize>| {
+        if k <= n - k {
+            let positions: Vec<usize> = data.collect();
+            small_generator(code).map(|matrix| matrix.select_columns(&positions).rank() == k)
         } else {
-            code.generator_matrix()
-                .select_columns(&data.collect::<Vec<usize>>())
-                .rank()
-                == k
+            let positions: Vec<usize> = checks.collect();
+            small_check(code).map(|matrix| matrix.select_columns(&positions).rank() == n - k)
         }
     };
-    if free(0..k, k..n) {
+    let (Some(first), Some(last)) = (informative(0..k, k..n), informative(n - k..n, 0..n - k))
+    else {
+        return too_large();
+    };
+    if first {
         return Judgement::holds(
             "the first k positions are free to carry data, the checks come last",
         );
     }
-    if free(n - k..n, 0..n - k) {
+    if last {
         return Judgement::holds(
             "the last k positions are free to carry data, the checks come first",
         );
@@ -446,10 +461,10 @@ fn equidistant(session: &Session, code: &Code) -> Judgement {
 }
 
 fn projective(_session: &Session, code: &Code) -> Judgement {
-    if !affordable(code) {
-        return Judgement::undecided("a generator matrix is too large to build");
-    }
     let field = code.field();
+    if code.dimension().saturating_mul(code.length()) > COLUMN_ENTRIES {
+        return too_large();
+    }
     let generator = code.generator_matrix();
     let mut seen = std::collections::HashMap::new();
     for position in 0..code.length() {

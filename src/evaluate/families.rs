@@ -7,7 +7,7 @@ use crate::code::Code;
 use crate::finding::{Finding, catalogue};
 use crate::source::Span;
 use crate::syntax::tree::{
-    Columns, Expression, MonomialShape, Monomials, Parameter, Pick, PointShape, Points,
+    Columns, Expression, MonomialShape, Monomials, Name, Parameter, Pick, PointShape, Points,
 };
 use crate::value::{self, CODE_LENGTH, Value};
 use std::cmp::Ordering;
@@ -129,7 +129,10 @@ impl Evaluator<'_> {
                 self.size(count, scope, "the number of variables", 0, 64)?,
                 None,
             ),
-            PointShape::Named(names) => (names.len(), Some(names)),
+            PointShape::Named(names) => {
+                distinct(names.iter())?;
+                (names.len(), Some(names))
+            }
         };
         let count = self.candidates(field.order(), variables, span, "points")?;
         let mut coordinates = Vec::new();
@@ -177,7 +180,11 @@ impl Evaluator<'_> {
                 self.size(count, scope, "the number of variables", 0, 64)?,
                 None,
             ),
-            MonomialShape::Pattern(pairs) => (pairs.len(), Some(pairs)),
+            MonomialShape::Pattern(pairs) => {
+                distinct(pairs.iter().map(|(variable, _)| variable))?;
+                distinct(pairs.iter().map(|(_, exponent)| exponent))?;
+                (pairs.len(), Some(pairs))
+            }
         };
         let count = self.candidates(field.order(), variables, span, "monomials")?;
         let mut exponents: Vec<Vec<u32>> = Vec::new();
@@ -382,6 +389,21 @@ impl Evaluator<'_> {
             )),
         }
     }
+}
+
+/// That each of some names stands for one thing.
+fn distinct<'a>(names: impl Iterator<Item = &'a Name>) -> Outcome<()> {
+    let mut seen = std::collections::HashSet::new();
+    for name in names {
+        if !seen.insert(name.text.as_str()) {
+            let message = format!(
+                "`{}` is named twice here, so it would mean two things",
+                name.text
+            );
+            return Err(wrong(catalogue::DUPLICATE_NAME, name.span, message));
+        }
+    }
+    Ok(())
 }
 
 /// The index-th vector in numeric order, first entry most significant.

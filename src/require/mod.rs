@@ -324,9 +324,18 @@ pub(crate) fn of_columns(named: &[String], binary: bool) -> Option<String> {
     }
 }
 
+/// A pattern with `N` for each operand.
+fn readable(pattern: &str) -> String {
+    let words: Vec<&str> = pattern
+        .split(' ')
+        .map(|word| if word == "_" { "N" } else { word })
+        .collect();
+    words.join(" ")
+}
+
 fn unknown_phrase(pattern: &str, span: Span) -> Finding {
     let known: Vec<&str> = phrases().map(|phrase| phrase.pattern).collect();
-    let shown = pattern.replace('_', "N");
+    let shown = readable(pattern);
     let finding = Finding::new(
         catalogue::UNKNOWN_REQUIREMENT,
         span,
@@ -346,7 +355,7 @@ fn unknown_phrase(pattern: &str, span: Span) -> Finding {
     }
     let near: Vec<String> = near
         .iter()
-        .map(|near| format!("`{}`", near.replace('_', "N")))
+        .map(|near| format!("`{}`", readable(near)))
         .collect();
     finding.help(format!("did you mean {}?", near.join(", or ")))
 }
