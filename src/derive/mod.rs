@@ -138,6 +138,9 @@ impl<'a> Session<'a> {
         if distance.exact().is_none() {
             self.learn_from_weights(code, &mut distance);
         }
+        if distance.exact().is_none() && small_generator(code).is_none() {
+            learn_from_size(code, &mut distance);
+        }
         if distance.exact().is_none() && effort > Effort::Theorems {
             self.search(code, &mut distance, effort);
         }
@@ -317,6 +320,21 @@ impl Knowledge for Session<'_> {
     fn cyclic(&self, code: &Code) -> bool {
         properties::is_cyclic(self, code).verdict == Verdict::Holds
     }
+}
+
+/// A long code of high rate has no words to look at: what n, k and q allow says more.
+fn learn_from_size(code: &Code, distance: &mut Distance) {
+    if code.redundancy() > 1 << 12 {
+        return;
+    }
+    let (n, k, q) = (code.length(), code.dimension(), code.field().order());
+    let most = search::bounds::hamming(q, n, k);
+    distance.learn(upper(
+        most,
+        "hamming",
+        format!("d is at most {most}, or the balls around the words would overlap (Hamming, 1950)"),
+        None,
+    ));
 }
 
 /// Takes a bound over; a witness is believed only when it is a word of the code of that weight.

@@ -100,7 +100,7 @@ pub(super) fn cost_of_sets(
     }
     let whole = (n / k).min(MOST_SETS);
     let mut fresh = vec![k; whole];
-    if !n.is_multiple_of(k) {
+    if !n.is_multiple_of(k) && whole < MOST_SETS {
         fresh.push(n % k);
     }
     let shape = Shape { q, n, k, fresh };
