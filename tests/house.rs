@@ -224,7 +224,8 @@ fn every_module_says_what_it_is_for() {
 fn nothing_is_left_to_be_done() {
     // The words are put together here so that this file does not hold them.
     let words = [["TO", "DO"], ["FIX", "ME"]].map(|halves| halves.concat());
-    let macros = ["todo", "unimplemented"].map(|name| format!("{name}!"));
+    let macros =
+        ["to".to_string() + "do", "un".to_string() + "implemented"].map(|name| format!("{name}!"));
     for folder in ["src", "tests", "specs", "grammar", "benches"] {
         for (file, text) in files(folder, "") {
             if file == "tests/house.rs" {

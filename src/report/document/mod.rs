@@ -151,7 +151,11 @@ fn facts(code: &CodeReport) -> Vec<(String, String)> {
         fact("covering radius", radius.to_string());
     }
     for (name, measure) in code.measures.iter() {
-        let value = plain_value(&measure.value);
+        let value = match (&measure.value["least"], &measure.value["most"]) {
+            (Value::Number(least), Value::Number(most)) if least == most => least.to_string(),
+            (Value::Number(least), Value::Number(most)) => format!("{least}..{most}"),
+            _ => plain_value(&measure.value),
+        };
         let says = measure.says.as_ref().map(|says| format!(" ({says})"));
         fact(&spaced(name), value + &says.unwrap_or_default());
     }
