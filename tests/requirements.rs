@@ -585,3 +585,50 @@ code gauge over byte = reed_solomon(length: 20, dimension: 14)
 ";
     assert_eq!(told(spec), "");
 }
+
+#[test]
+fn a_mask_moves_the_words_that_a_stuck_bus_gives() {
+    let verdicts = |steps: &str| -> Vec<Verdict> {
+        let spec = format!(
+            "field bit = GF(2)\ncode word over bit = repetition(3){steps}\n  require detects all_zeros\n  require detects all_ones\n"
+        );
+        common::with_spec(&spec, |view| {
+            let clauses = &view.codes[0].verdicts.clauses;
+            clauses
+                .iter()
+                .map(|clause| clause.judgement.verdict)
+                .collect()
+        })
+    };
+    use Verdict::{Fails, Holds};
+    // As sent, the words are 000 and 111; with the mask 101 and 010.
+    assert_eq!(verdicts(""), [Fails, Fails]);
+    assert_eq!(verdicts(" then mask(with: [1, 0, 1])"), [Holds, Holds]);
+    // The mask is a word: the same words are sent.
+    assert_eq!(verdicts(" then mask(with: [1, 1, 1])"), [Fails, Fails]);
+    let even = "field bit = GF(2)\ncode word over bit = span(| 1 1 0 |) then mask(with: [0, 0, 1])\n  require detects all_ones\n";
+    let seen = common::with_spec(even, |view| {
+        view.codes[0].verdicts.clauses[0].judgement.verdict
+    });
+    assert_eq!(seen, Fails, "110 with the mask 001 is 111");
+}
+
+#[test]
+fn a_mask_makes_another_code_on_the_wire() {
+    let spec = "\
+field bit = GF(2)
+code plain over bit = repetition(3)
+code moved over bit = repetition(3) then mask(with: [1, 0, 1])
+  require same code as plain
+code kept over bit = repetition(3) then mask(with: [1, 1, 1])
+  require same code as plain
+";
+    let seen: Vec<Verdict> = common::with_spec(spec, |view| {
+        let clauses = view
+            .codes
+            .iter()
+            .flat_map(|checked| &checked.verdicts.clauses);
+        clauses.map(|clause| clause.judgement.verdict).collect()
+    });
+    assert_eq!(seen, [Verdict::Fails, Verdict::Holds]);
+}

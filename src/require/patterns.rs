@@ -46,8 +46,11 @@ pub const PHRASES: &[Phrase] = &[
     },
     Phrase {
         pattern: "detects all_zeros",
-        says: "The word of zeros, as a stuck bus gives it, is no word of the code.",
-        decide: |_| {
+        says: "The word of zeros, as a stuck bus gives it, is no word as sent: a mask counts.",
+        decide: |asked| {
+            if asked.code().offset().is_some() {
+                return Ok(stuck(asked, 0));
+            }
             let mut ruling = Ruling::new(Judgement::fails(
                 "the word of zeros is a word of every linear code",
             ));
@@ -59,8 +62,8 @@ pub const PHRASES: &[Phrase] = &[
     },
     Phrase {
         pattern: "detects all_ones",
-        says: "The word with every bit of every symbol set, as a stuck bus gives it, is no word of the code.",
-        decide: all_ones,
+        says: "The word with every bit of every symbol set, as a stuck bus gives it, is no word as sent: a mask counts.",
+        decide: |asked| Ok(stuck(asked, asked.code().field().order() as u32 - 1)),
     },
     Phrase {
         pattern: "detects _ groups of _",
@@ -201,21 +204,35 @@ fn odd_errors(asked: &Asked) -> Result<Ruling, Stop> {
     }))
 }
 
-fn all_ones(asked: &Asked) -> Result<Ruling, Stop> {
-    // A multiple of a word is a word, so every symbol may be taken to be 1.
+/// Whether a bus that is stuck at one symbol gives no word: what is sent is a word of the code with
+/// the fixed word of `mask` added, if there is one.
+fn stuck(asked: &Asked, symbol: u32) -> Ruling {
     let code = asked.code();
-    let word = vec![1; code.length()];
+    let field = code.field();
+    let mut word = vec![symbol; code.length()];
+    let masked = code.offset().is_some();
+    for (entry, &offset) in word.iter_mut().zip(code.offset().unwrap_or(&[])) {
+        *entry = field.sub(*entry, offset);
+    }
+    let without = if masked {
+        ", the fixed word taken off,"
+    } else {
+        ""
+    };
     if code.contains(&word) {
-        return Ok(Ruling::new(
-            Judgement::fails("it passes all checks").witness(Some(word)),
-        ));
+        let judgement = Judgement::fails(format!("it{without} passes all checks"));
+        return Ruling::new(if masked {
+            judgement
+        } else {
+            judgement.witness(Some(word))
+        });
     }
     let symptoms = code.check_matrix().times(&word);
     let failed = symptoms.iter().filter(|&&entry| entry != 0).count();
-    Ok(Ruling::new(Judgement::holds(format!(
-        "it fails {failed} of {} checks",
+    Ruling::new(Judgement::holds(format!(
+        "it{without} fails {failed} of {} checks",
         symptoms.len()
-    ))))
+    )))
 }
 
 #[derive(Clone, Copy, PartialEq, Eq)]

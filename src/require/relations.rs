@@ -74,10 +74,29 @@ fn inside(small: &Code, large: &Code, whose: &str) -> Judgement {
     }
 }
 
+/// Whether the fixed words added on the wire move the two codes apart.
+fn masks_differ(code: &Code, other: &Code) -> bool {
+    let field = code.field();
+    let none = vec![0; code.length()];
+    let own = code.offset().unwrap_or(&none);
+    let theirs = other.offset().unwrap_or(&none);
+    let difference: Vec<u32> = own
+        .iter()
+        .zip(theirs)
+        .map(|(&left, &right)| field.sub(left, right))
+        .collect();
+    !code.contains(&difference)
+}
+
 fn same_code(asked: &Asked) -> Result<Ruling, Stop> {
     let other = asked.code_operand(0)?;
     comparable(asked, other)?;
     let code = asked.code();
+    if masks_differ(code, other) {
+        return Ok(Ruling::new(Judgement::fails(
+            "the fixed words of `mask` differ by a word that is not in the code, so other words are sent",
+        )));
+    }
     if code.dimension() != other.dimension() {
         return Ok(Ruling::new(Judgement::fails(format!(
             "k is {}, the other's is {}",
